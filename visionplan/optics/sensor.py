@@ -1,0 +1,16 @@
+"""The size of the sensor."""
+
+import numpy as np
+
+from visionplan.optics import Numbers
+
+
+def sides(pixels_wide: Numbers, pixels_high: Numbers, pitch: Numbers, portrait: Numbers) -> tuple[Numbers, Numbers]:
+    """Sides of the sensor along the field's width and height, mm; `portrait` turns the camera by 90°."""
+    long, short, turned = np.multiply(pixels_wide, pitch), np.multiply(pixels_high, pitch), np.asarray(portrait)
+    return np.where(turned, short, long)[()], np.where(turned, long, short)[()]
+
+
+def diagonal(width: Numbers, height: Numbers) -> Numbers:
+    """Diagonal of a rectangle, mm."""
+    return np.hypot(width, height)

@@ -20,8 +20,8 @@ def j1(x: Numbers) -> Numbers:
 
 def _bessel(order: int, x: Numbers) -> Numbers:
     x = np.asarray(x, dtype=float)
-    with np.errstate(divide="ignore", invalid="ignore"):
-        return np.where(x < SWITCH, _integral(order, np.minimum(x, SWITCH)), _series(order, x))[()]
+    with np.errstate(invalid="ignore"):
+        return np.where(x < SWITCH, _integral(order, np.minimum(x, SWITCH)), _series(order, np.maximum(x, SWITCH)))[()]
 
 
 def _integral(order: int, x: np.ndarray) -> np.ndarray:

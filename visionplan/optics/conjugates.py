@@ -11,7 +11,7 @@ from visionplan.optics import Numbers
 def object_distance(focal_length: Numbers, magnification: Numbers) -> Numbers:
     """Distance from the front principal plane to the part, f (1 + 1/m), mm.
 
-    >>> object_distance(25.0, 0.1)
+    >>> float(object_distance(25.0, 0.1))
     275.0
     """
     with np.errstate(divide="ignore"):

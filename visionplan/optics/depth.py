@@ -11,7 +11,7 @@ from visionplan.optics import Numbers
 
 def blur_on_part(f_number: Numbers, magnification: Numbers, pupil_ratio: Numbers, defocus: Numbers) -> Numbers:
     """Diameter of the blur on the part at `defocus` from the focus plane, Δ/(N (1/m + 1/p)), mm."""
-    with np.errstate(divide="ignore"):
+    with np.errstate(divide="ignore", invalid="ignore"):
         return defocus / (f_number * (np.divide(1, magnification) + np.divide(1, pupil_ratio)))
 
 
@@ -24,7 +24,7 @@ def depth_for_blur(f_number: Numbers, magnification: Numbers, pupil_ratio: Numbe
 def hyperfocal_distance(focal_length: Numbers, f_number: Numbers, blur: Numbers) -> Numbers:
     """Nearest focus at which infinity is still sharp, f²/(N c) + f, mm, for a blur of c on the sensor.
 
-    >>> hyperfocal_distance(16.0, 4.0, 0.005)
+    >>> float(hyperfocal_distance(16.0, 4.0, 0.005))
     12816.0
     """
     with np.errstate(divide="ignore"):

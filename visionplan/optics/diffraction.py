@@ -72,7 +72,7 @@ def otf(frequency: Numbers, wavelength: Numbers, working_f_number: Numbers, defo
     Numbers
         1 at zero frequency, 0 from the cutoff on; within 1e-6 for any defocus, 1e-9 up to 60 wavelengths.
 
-    >>> round(otf(227.27, 550e-6, 4.0), 4)
+    >>> float(round(otf(227.27, 550e-6, 4.0), 4))
     0.391
     """
     with np.errstate(invalid="ignore"):

@@ -24,7 +24,7 @@ MATERIALS = (*SELLMEIER, *FIXED_INDEX)
 def refractive_index(material: str, wavelength_mm: Numbers) -> Numbers:
     """Refractive index of one of MATERIALS; KeyError for any other.
 
-    >>> round(refractive_index("N-BK7", 587.5618e-6), 4)
+    >>> float(round(refractive_index("N-BK7", 587.5618e-6), 4))
     1.5168
     """
     if material in SELLMEIER:
@@ -97,8 +97,9 @@ def mirror_footprint(
     for corner in (np.divide(field_along, 2), np.divide(field_along, -2)):
         lean = cos * pupil_to_field - sin * corner
         ahead = lean - cos * pupil_to_mirror
-        touch = radius * np.sqrt(lean**2 + sin**2 * (edge**2 - radius**2)) - lean * edge
-        reach.append(edge + ahead * touch / (lean**2 - sin**2 * radius**2))
+        with np.errstate(divide="ignore", invalid="ignore"):
+            touch = radius * np.sqrt(lean**2 + sin**2 * (edge**2 - radius**2)) - lean * edge
+            reach.append(edge + ahead * touch / (lean**2 - sin**2 * radius**2))
     return rise + fall, np.where(np.isnan(rise), np.nan, 2 * np.maximum(*reach))[()]
 
 

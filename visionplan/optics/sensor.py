@@ -7,8 +7,9 @@ from visionplan.optics import Numbers
 
 def sides(pixels_wide: Numbers, pixels_high: Numbers, pitch: Numbers, portrait: Numbers) -> tuple[Numbers, Numbers]:
     """Sides of the sensor along the field's width and height, mm; `portrait` turns the camera by 90°."""
-    long, short, turned = np.multiply(pixels_wide, pitch), np.multiply(pixels_high, pitch), np.asarray(portrait)
-    return np.where(turned, short, long)[()], np.where(turned, long, short)[()]
+    width: np.ndarray = np.multiply(pixels_wide, pitch)
+    height: np.ndarray = np.multiply(pixels_high, pitch)
+    return np.where(portrait, height, width)[()], np.where(portrait, width, height)[()]
 
 
 def diagonal(width: Numbers, height: Numbers) -> Numbers:

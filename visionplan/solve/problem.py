@@ -1,0 +1,180 @@
+"""A brief and a catalogue made ready to judge: every symbol of every item as an array, defaults filled in.
+
+NaN stands for a value that the catalogue leaves out and that has no default: what needs it is unknown.
+"""
+
+from dataclasses import dataclass
+from functools import cached_property
+
+import numpy as np
+
+from visionplan.brief.model import Brief
+from visionplan.catalogue.items import Catalogue, Table
+from visionplan.optics.light import noise_variance
+from visionplan.optics.mounts import FLANGE_DISTANCE, thread
+from visionplan.optics.stops import stops_between
+from visionplan.solve.ask import Arrangement, Ask
+from visionplan.solve.stacks import NO_RINGS, Stacks, stacks_of
+
+DEFAULT_TRANSMITTANCE = 0.9
+
+
+@dataclass(frozen=True)
+class Problem:
+    """A brief, a catalogue, and what follows from them once for all."""
+
+    brief: Brief
+    catalogue: Catalogue
+
+    @cached_property
+    def ask(self) -> Ask:
+        """The derived numbers of the brief."""
+        return Ask(self.brief)
+
+    @cached_property
+    def lens(self) -> dict[str, np.ndarray]:
+        """Symbol → array over the lenses; N is (lenses, stops), NaN where a lens has fewer stops."""
+        return _lens_symbols(self.catalogue.lenses)
+
+    @cached_property
+    def camera(self) -> dict[str, np.ndarray]:
+        """Symbol → array over the cameras."""
+        return _camera_symbols(self.catalogue.cameras, self.ask)
+
+    @cached_property
+    def flange(self) -> tuple[np.ndarray, np.ndarray]:
+        """Flange distances of cameras and of lenses such that their difference is right.
+
+        Two equal mounts that both leave it out differ by 0: each such mount has a stand-in of its own.
+        """
+        return _flanges(self.catalogue.cameras), _flanges(self.catalogue.lenses)
+
+    @cached_property
+    def flange_unknown(self) -> tuple[np.ndarray, np.ndarray]:
+        """Whether the flange distance of a camera, of a lens, is neither stated nor known by its mount."""
+        return _unstated_flange(self.catalogue.cameras), _unstated_flange(self.catalogue.lenses)
+
+    @cached_property
+    def mount(self) -> tuple[np.ndarray, np.ndarray]:
+        """Mount of each camera and of each lens as a number."""
+        names = {name: i for i, name in enumerate(dict.fromkeys(self.camera_mounts + self.lens_mounts))}
+        return np.array([names[m] for m in self.camera_mounts], int), np.array(
+            [names[m] for m in self.lens_mounts], int
+        )
+
+    @cached_property
+    def thread(self) -> tuple[np.ndarray, np.ndarray, tuple[str, ...]]:
+        """Thread of each camera and of each lens as a number, and the threads' names."""
+        threads = {m: thread(m) for m in {*self.camera_mounts, *self.lens_mounts}}
+        names = tuple(sorted(set(threads.values())))
+        number = {m: names.index(t) for m, t in threads.items()}
+        return (
+            np.array([number[m] for m in self.camera_mounts], int),
+            np.array([number[m] for m in self.lens_mounts], int),
+            names,
+        )
+
+    @property
+    def camera_mounts(self) -> list[str]:
+        """Mount of each camera, as the file words it."""
+        return self.catalogue.cameras["mount"]
+
+    @property
+    def lens_mounts(self) -> list[str]:
+        """Mount of each lens, as the file words it."""
+        return self.catalogue.lenses["mount"]
+
+    @cached_property
+    def _stacks(self) -> dict[tuple[str, int], Stacks]:
+        return {}
+
+    def stacks(self, of_thread: str, cameras: int) -> Stacks:
+        """The spacer stacks of a thread when that many cameras share the rings."""
+        if not len(self.catalogue.spacers):
+            return NO_RINGS
+        key = of_thread, cameras
+        if key not in self._stacks:
+            self._stacks[key] = stacks_of(self.catalogue.spacers, of_thread, cameras)
+        return self._stacks[key]
+
+    def sides(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:
+        """Length of every camera's sensor along the field's width and height."""
+        long, short = self.camera["wide"], self.camera["high"]
+        return (short, long) if arrangement.portrait else (long, short)
+
+
+def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
+    telecentric = np.array([kind == "telecentric" for kind in table["kind"]], bool)
+    f = np.where(telecentric, np.inf, table["focal length"])
+    mod, nearest = table["nearest object"], table["nearest magnification"]
+    length = table["length"]
+    with np.errstate(invalid="ignore", divide="ignore"):
+        from_nearest = f * (1 + 1 / nearest) - mod
+        half = np.where(np.isnan(length), 0.0, length / 2)
+        derived = np.where(np.isnan(nearest), half, from_nearest)
+        a = np.where(np.isnan(table["front principal"]), derived, table["front principal"])
+        reach = mod + a - f
+        ring = np.where(np.isnan(nearest), np.where(reach > 0, f * f / reach, np.nan), f * nearest)
+    ratio = table["pupil ratio"]
+    lists = [
+        listed or stops_between(low, None if np.isnan(high) else high)
+        for listed, low, high in zip(
+            table["stops"], table["f-number min"].tolist(), table["f-number max"].tolist(), strict=True
+        )
+    ]
+    stops = np.full((len(lists), max(map(len, lists), default=1)), np.nan)
+    for row, values in enumerate(lists):
+        stops[row, : len(values)] = sorted(values)
+    tolerance = table["working distance tolerance"]
+    tau = table["transmittance"]
+    return {
+        "telecentric": telecentric,
+        "f": f,
+        "N": stops,
+        "p": np.where(telecentric, np.inf, np.where(np.isnan(ratio), 1.0, ratio)),
+        "a": np.where(telecentric, 0.0, a),
+        "x": np.where(telecentric, 0.0, ring),
+        "M": np.where(telecentric, table["magnification"], np.nan),
+        "WD_stated": np.where(telecentric, table["working distance"], np.nan),
+        "WD_room": np.where(np.isnan(tolerance), 0.0, tolerance),
+        "telecentricity": table["telecentricity"],
+        "tau": np.where(np.isnan(tau), DEFAULT_TRANSMITTANCE, tau),
+        "detail": table["detail limit"],
+        "lens_length": length,
+        "lens_diameter": table["diameter"],
+        "circle": table["image circle"],
+        "lens_mass": table["mass"],
+        "lens_price": table["price"],
+        "lens_stock": table["stock"],
+    }
+
+
+def _camera_symbols(table: Table, ask: Ask) -> dict[str, np.ndarray]:
+    pitch = table["pixel pitch"]
+    return {
+        "line": np.array([kind == "line" for kind in table["kind"]], bool),
+        "P": pitch,
+        "wide": table["pixels wide"] * pitch,
+        "high": table["pixels high"] * pitch,
+        "kappa": np.array([ask.mosaic if colour == "colour" else 1.0 for colour in table["colour"]]),
+        "eta": table["quantum efficiency"],
+        "variance": noise_variance(table["dark noise"], table["saturation capacity"], table["bit depth"]),
+        "saturation": table["saturation capacity"],
+        "t_min": table["shortest exposure"],
+        "line_rate": table["line rate"],
+        "frame_rate": table["frame rate"],
+        "camera_length": table["length"],
+        "camera_mass": table["mass"],
+        "camera_price": table["price"],
+        "camera_stock": table["stock"],
+    }
+
+
+def _unstated_flange(table: Table) -> np.ndarray:
+    by_mount = np.array([mount in FLANGE_DISTANCE for mount in table["mount"]], bool)
+    return np.isnan(table["flange distance"]) & ~by_mount
+
+
+def _flanges(table: Table) -> np.ndarray:
+    usual = np.array([FLANGE_DISTANCE.get(mount, np.nan) for mount in table["mount"]])
+    return np.where(np.isnan(table["flange distance"]), usual, table["flange distance"])

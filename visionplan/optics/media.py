@@ -88,7 +88,7 @@ def mirror_footprint(
     -------
     tuple
         Length down the mirror's slope and width across it. The length's middle lies `mirror_offset` off the axis.
-        NaN where the light runs steeper than the mirror.
+        NaN where a mirror of that size would reach through the pupil or the field.
     """
     rise, fall = _slope_ends(field_along, pupil_diameter, pupil_to_field, pupil_to_mirror, angle)
     cos, sin, radius, edge = np.cos(angle), np.sin(angle), np.divide(pupil_diameter, 2), np.divide(field_across, 2)
@@ -115,11 +115,14 @@ def mirror_offset(
     return (rise - fall) / 2
 
 
-def _slope_ends(side: Numbers, pupil: Numbers, to_field: Numbers, to_mirror: Numbers, angle: Numbers):
+def _slope_ends(
+    side: Numbers, pupil: Numbers, to_field: Numbers, to_mirror: Numbers, angle: Numbers
+) -> tuple[Numbers, Numbers]:
     """Where the light's edges meet the slope, from the axis away from the lens and towards it."""
     opening = np.divide(np.subtract(side, pupil), 2 * np.asarray(to_field))
     half = np.divide(pupil, 2) + opening * to_mirror
-    cos, climb = np.cos(angle), opening * np.sin(angle)
+    cos, sin = np.cos(angle), np.sin(angle)
     with np.errstate(divide="ignore", invalid="ignore"):
-        steep = np.abs(climb) >= cos
-        return tuple(np.where(steep, np.nan, half / (cos + sign * climb))[()] for sign in (-1, 1))
+        rise, fall = half / (cos - opening * sin), half / (cos + opening * sin)
+        room = (rise >= 0) & (fall >= 0) & (rise * sin <= to_field - to_mirror) & (fall * sin <= to_mirror)
+        return np.where(room, rise, np.nan)[()], np.where(room, fall, np.nan)[()]

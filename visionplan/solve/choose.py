@@ -151,9 +151,8 @@ def _columns(
     code = np.maximum(np.maximum(pair_code, rigs.gates), rigs.contrast[rows, stop])
     arrangement = rigs.arrangement
     counted = np.zeros(len(rows), int)
-    for number, name in enumerate(problem.thread[2]):
-        here = np.flatnonzero(problem.thread[1][rigs.lenses] == number)
-        counted[here] = problem.stacks(name, arrangement.cameras).rings[rigs.stack[here]]
+    for here, stacks in problem.stacks_by_thread(rigs.lenses, arrangement.cameras):
+        counted[here] = stacks.rings[rigs.stack[here]]
     return {
         "pair": pair,
         "block": np.full(len(rows), block),

@@ -13,14 +13,18 @@ _MOTION = ("line_rate", "t_min")
 
 @dataclass(frozen=True)
 class Classes:
-    """Groups of cameras: those of a class stand side by side, cheapest first, then by id."""
+    """Groups of cameras; those of a class stand side by side."""
 
     first: np.ndarray
     """Row of one camera of each class."""
     begin: np.ndarray
     """Where each class begins in `members`; one more at the end."""
     members: np.ndarray
-    """Rows of the cameras, class by class: nothing unknown first, then cheapest, not stated last, then by id."""
+    """Rows of the cameras, class by class, in the order asked for."""
+    number: np.ndarray
+    """Class of every camera of the catalogue; −1 for those left out."""
+    cheapest: np.ndarray
+    """Least price in each class; NaN where none is stated."""
 
     def __len__(self) -> int:
         return len(self.first)
@@ -40,10 +44,17 @@ class Classes:
         return position, self.members[self.begin[classes][position] + within]
 
 
-def classes_of(problem: Problem, cameras: np.ndarray, unknown: np.ndarray, symbols: tuple[str, ...] = ()) -> Classes:
+def classes_of(
+    problem: Problem,
+    cameras: np.ndarray,
+    symbols: tuple[str, ...] = (),
+    within: tuple[np.ndarray, ...] = (),
+    apart: np.ndarray | None = None,
+) -> Classes:
     """Group the given rows of cameras by everything that the demands asked for can tell apart, and by `symbols`.
 
-    `unknown` says of every camera of the catalogue whether a gate of its own is unknown.
+    `within` are arrays over all cameras by which those of a class are ordered, the first first, then by id; `apart`
+    is one that parts classes too.
     """
     ask, camera = problem.ask, problem.camera
     names = list(_OPTICS)
@@ -58,17 +69,18 @@ def classes_of(problem: Problem, cameras: np.ndarray, unknown: np.ndarray, symbo
     if ask.brief.in_hand:
         names.append("camera_stock")
     columns = [camera[name] for name in dict.fromkeys([*names, *symbols])]
-    columns += [problem.mount[0], problem.flange[0]]
+    columns += [problem.mount[0], problem.flange[0], *(() if apart is None else (apart,))]
     key = np.column_stack([np.nan_to_num(column.astype(float), nan=-1.0) for column in columns])[cameras]
     number = _numbers(key)
-    ids = problem.catalogue.cameras["id"]
-    by_id = np.empty(len(ids), int)
-    by_id[sorted(range(len(ids)), key=ids.__getitem__)] = np.arange(len(ids))
-    order = np.lexsort((by_id[cameras], camera["camera_price"][cameras], unknown[cameras], number))
+    order = np.lexsort((*(array[cameras] for array in (problem.id_rank[0], *reversed(within))), number))
     count = np.bincount(number) if len(number) else np.zeros(0, int)
     begin = np.concatenate(([0], np.cumsum(count)))
     members = cameras[order]
-    return Classes(members[begin[:-1]], begin, members)
+    of_all = np.full(len(camera["P"]), -1)
+    of_all[cameras] = number
+    price = camera["camera_price"][members]
+    cheapest = np.fmin.reduceat(price, begin[:-1]) if len(members) else np.zeros(0)
+    return Classes(members[begin[:-1]], begin, members, of_all, cheapest)
 
 
 def _numbers(key: np.ndarray) -> np.ndarray:

@@ -9,6 +9,7 @@ from typing import Any
 
 import numpy as np
 
+from visionplan.optics.light import signal_to_noise
 from visionplan.solve import bounds, checks
 from visionplan.solve.ask import Ask
 from visionplan.solve.case import Case
@@ -17,8 +18,23 @@ NOT_ASKED, MET, UNKNOWN, MISSED = -1, 0, 1, 2
 """Codes of a verdict, worse ones greater."""
 VERDICTS = {NOT_ASKED: "not asked", MET: "met", UNKNOWN: "unknown", MISSED: "missed"}
 
-Concede = Callable[[Case, Any, Any], list[tuple[Any, Any, str | None]]]
-"""From the interval that the other demands leave: (asked, needed, end) where the demand would just hold."""
+
+@dataclass(frozen=True)
+class Give:
+    """What a demand must give way for a rig to fit, where the other demands leave it an interval: arrays over rigs."""
+
+    asked: Any
+    needed: Any
+    at: Any
+    """The magnification at which the demand then just holds."""
+    loosens: int
+    """Whether a greater (1) or a smaller (−1) value asks for less."""
+    end: str | None = None
+    """The end of a range that is meant: nearer or farther."""
+
+
+Concede = Callable[[Case, Any, Any], list[Give]]
+"""From the interval that the other demands leave."""
 
 
 @dataclass(frozen=True)
@@ -55,27 +71,57 @@ class Demand:
     """Unit of the concession, where it isn't the demand's."""
 
 
-def _at_least(demand_asked, check) -> Concede:
-    """A demand with an upper bound gets most at the lower end of what the others leave."""
-    return lambda case, lo, hi: [(demand_asked(case), check(case, lo), None)]
+def _concede_cover(case: Case, lo, hi):
+    return [Give(1.0, checks.cover(case, lo), lo, -1)]
+
+
+def _concede_sampling(case: Case, lo, hi):
+    return [Give(case.q, checks.sampling(case, hi), hi, 1)]
 
 
 def _concede_reach(case: Case, lo, hi):
     near, far = case.brief.working_distance
-    return [(near, case.WD(hi), "nearer"), (far, case.WD(lo), "farther")]
+    least = max(case.brief.above, sum(layer.thickness for layer in case.brief.layers))
+    nearer = case.WD(lo)
+    return [
+        Give(near, np.where(nearer > least, nearer, np.nan), lo, -1, "nearer"),
+        Give(far, case.WD(hi), hi, 1, "farther"),
+    ]
 
 
 def _concede_headroom(case: Case, lo, hi):
-    # the sum is least at m = 1
-    return [(case.brief.headroom, checks.headroom(case, np.clip(1.0, lo, hi)), None)]
+    shortest = np.clip(1.0, lo, hi)
+    return [Give(case.brief.headroom, checks.headroom(case, shortest), shortest, 1)]
 
 
-def _concede_feature(check) -> Concede:
-    return lambda case, lo, hi: [(case.feature, check(case, hi), None)]
+def _concede_near_depth(case: Case, lo, hi):
+    return [Give(case.A + case.g, checks.near_depth(case, lo), lo, -1)]
+
+
+def _concede_far_depth(case: Case, lo, hi):
+    return [Give(case.B + case.g, checks.far_depth(case, lo), lo, -1)]
+
+
+def _concede_rayleigh(case: Case, lo, hi):
+    return [Give(case.feature, checks.rayleigh(case, hi), hi, 1)]
+
+
+def _concede_lens_detail(case: Case, lo, hi):
+    return [Give(case.feature, 1 / (2 * case.detail * hi), hi, 1)]
+
+
+def _concede_light(case: Case, lo, hi):
+    if case.ask.irradiance is None:
+        return [Give(case.brief.snr, signal_to_noise(case.saturation, case.variance), lo, -1)]
+    return [Give(case.brief.snr, checks.light(case, lo), lo, -1)]
+
+
+def _concede_perspective(case: Case, lo, hi):
+    return [Give(case.brief.max_perspective, checks.perspective(case, lo), lo, 1)]
 
 
 def _concede_speed(case: Case, lo, hi):
-    return [(case.v, bounds.fastest_rows(case) * case.P / lo, None)]
+    return [Give(case.v, bounds.fastest_rows(case) * case.P / lo, lo, -1)]
 
 
 DEMANDS: tuple[Demand, ...] = (
@@ -91,7 +137,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("W", "H", "w", "h", "A", "f", "p"),
         "perspective projection through the entrance pupil",
         ("scene.field",),
-        concede=_at_least(lambda case: 1.0, checks.cover),
+        concede=_concede_cover,
     ),
     Demand(
         "sampling",
@@ -105,7 +151,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("q", "kappa", "P", "B", "f", "p"),
         "perspective projection through the entrance pupil; pixels a feature by common practice",
         ("scene.feature",),
-        concede=lambda case, lo, hi: [(case.q, checks.sampling(case, hi), None)],
+        concede=_concede_sampling,
     ),
     Demand(
         "reach",
@@ -169,7 +215,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("scene.above", "scene.below"),
         of="lens",
         applies=lambda case: case.A + case.g > 0,
-        concede=_at_least(lambda case: case.A + case.g, checks.near_depth),
+        concede=_concede_near_depth,
     ),
     Demand(
         "far depth",
@@ -185,7 +231,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("scene.above", "scene.below"),
         of="lens",
         applies=lambda case: case.B + case.g > 0,
-        concede=_at_least(lambda case: case.B + case.g, checks.far_depth),
+        concede=_concede_far_depth,
     ),
     Demand(
         "rayleigh",
@@ -200,7 +246,7 @@ DEMANDS: tuple[Demand, ...] = (
         "Rayleigh criterion",
         ("scene.feature",),
         of="lens",
-        concede=_concede_feature(checks.rayleigh),
+        concede=_concede_rayleigh,
     ),
     Demand(
         "lens detail",
@@ -216,7 +262,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("scene.feature",),
         of="lens",
         lacks=lambda case: np.isnan(case.detail),
-        concede=_concede_feature(lambda case, m: 1 / (2 * case.detail * m)),
+        concede=_concede_lens_detail,
         concede_unit="mm",
     ),
     Demand(
@@ -240,7 +286,7 @@ DEMANDS: tuple[Demand, ...] = (
                 & ~(case.line & (case.v > 0))
             )
         ),
-        concede=_at_least(lambda case: case.brief.snr, checks.light),
+        concede=_concede_light,
     ),
     Demand(
         "perspective",
@@ -255,7 +301,7 @@ DEMANDS: tuple[Demand, ...] = (
         "perspective projection through the entrance pupil",
         ("scene.max_perspective", "scene.above", "scene.below"),
         lacks=lambda case: case.telecentric & np.isnan(case.telecentricity) & (case.A + case.B > 0),
-        concede=_at_least(lambda case: case.brief.max_perspective, checks.perspective),
+        concede=_concede_perspective,
     ),
     Demand(
         "line rate",

@@ -37,12 +37,13 @@ def exposure(case: Case, m):
     """Exposure time, s: the longest allowed that does not fill the well; NaN where nothing known limits it."""
     limit = longest_exposure(case, m)
     with np.errstate(divide="ignore", invalid="ignore"):
-        fills = _fill_time(case, m)
+        fills = saturation_time(case, m)
         time = np.fmin(limit, fills)
     return np.where(np.isinf(time), np.nan, time)
 
 
-def _fill_time(case: Case, m):
+def saturation_time(case: Case, m):
+    """Exposure that just fills the well, s; NaN where the light or the camera's capacity is unknown."""
     if case.ask.irradiance is None:
         return np.nan
     return case.saturation / electron_rate(case, m, case.ask.irradiance)

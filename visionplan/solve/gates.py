@@ -32,6 +32,10 @@ class Gate:
     unit: str = ""
     lines: tuple[str, ...] = ()
     """The lines of the brief whose dropping drops it."""
+    loosens: int = 0
+    """Whether a greater (1) or a smaller (−1) value asks for less; 0 where it isn't conceded."""
+    symbols: tuple[str, ...] = ()
+    """Camera symbols that a concession of it tells apart."""
 
 
 def _at_most(got, limit):
@@ -190,6 +194,8 @@ GATES: tuple[Gate, ...] = (
         lambda case: case.v * (case.t_min if case.brief.pulse is None else case.brief.pulse),
         "mm",
         lines=("motion.speed",),
+        loosens=1,
+        symbols=("t_min",),
     ),
     Gate(
         "exposure",
@@ -210,6 +216,8 @@ GATES: tuple[Gate, ...] = (
         lambda case: case.frame_rate,
         "1/s",
         lines=("motion.rate",),
+        loosens=-1,
+        symbols=("frame_rate",),
     ),
     Gate(
         "line-scan motion",
@@ -241,12 +249,13 @@ GATES: tuple[Gate, ...] = (
     Gate(
         "distortion",
         "lens",
-        lambda problem: _at_most(np.abs(problem.catalogue.lenses["distortion"]), problem.brief.max_distortion),
+        lambda problem: _at_most(np.abs(problem.lens["distortion"]), problem.brief.max_distortion),
         lambda ask: ask.brief.max_distortion is not None,
         lambda case: case.brief.max_distortion,
-        lambda case: abs(case.problem.catalogue.lenses["distortion"][case.lenses]),
+        lambda case: np.abs(case.distortion),
         "1",
         lines=("choose.max_distortion",),
+        loosens=1,
     ),
     Gate(
         "grid pitch",
@@ -264,7 +273,6 @@ GATES: tuple[Gate, ...] = (
         lambda ask: ask.brief.max_count > 1,
         lambda case: float(case.brief.max_count),
         lambda case: float(case.nx * case.ny),
-        lines=("choose.max_count",),
     ),
     Gate(
         "price",
@@ -274,6 +282,8 @@ GATES: tuple[Gate, ...] = (
         lambda case: case.brief.max_price,
         price,
         lines=("choose.max_price",),
+        loosens=1,
+        symbols=("camera_price",),
     ),
     Gate(
         "mass",

@@ -185,12 +185,11 @@ class Judge:
         """The rigs, one for each spacer stack that can matter."""
         rows = [np.arange(len(case.cameras))]
         stack = [np.zeros(len(case.cameras), int)]
-        if len(self.problem.catalogue.spacers) and len(case.cameras):
+        if self.problem.has_rings and len(case.cameras):
             low, high = _extensions(case, bounds, all_stacks)
-            for number, name in enumerate(self.problem.thread[2]):
-                here = np.flatnonzero(self.problem.thread[1][case.lenses] == number)
-                length = self.problem.stacks(name, arrangement.cameras).length
-                if not len(here) or len(length) == 1:
+            for here, stacks in self.problem.stacks_by_thread(case.lenses, arrangement.cameras):
+                length = stacks.length
+                if len(length) == 1:
                     continue
                 first = np.searchsorted(length, low[here] - 1e-9, "left")
                 last = np.searchsorted(length, high[here] + 1e-9, "right")
@@ -203,11 +202,8 @@ class Judge:
                 stack.append(np.arange(count.sum()) - np.repeat(begin - first, count))
         row, chosen = np.concatenate(rows), np.concatenate(stack)
         rings, price = np.zeros((len(row), 1)), np.zeros((len(row), 1))
-        for number, name in enumerate(self.problem.thread[2]):
-            here = np.flatnonzero((self.problem.thread[1][case.lenses[row]] == number) & (chosen > 0))
-            if len(here):
-                stacks = self.problem.stacks(name, arrangement.cameras)
-                rings[here, 0], price[here, 0] = stacks.length[chosen[here]], stacks.price[chosen[here]]
+        for here, stacks in self.problem.stacks_by_thread(case.lenses[row], arrangement.cameras):
+            rings[here, 0], price[here, 0] = stacks.length[chosen[here]], stacks.price[chosen[here]]
         grown = case_of(self.problem, arrangement, case.cameras[row], case.lenses[row], rings=rings, ring_price=price)
         return grown, bounds.take(row), chosen, row
 

@@ -3,6 +3,7 @@
 NaN stands for a value that the catalogue leaves out and that has no default: what needs it is unknown.
 """
 
+from collections.abc import Iterator
 from dataclasses import dataclass
 from functools import cached_property
 
@@ -14,7 +15,7 @@ from visionplan.optics.light import noise_variance
 from visionplan.optics.mounts import FLANGE_DISTANCE, thread
 from visionplan.optics.stops import stops_between
 from visionplan.solve.ask import Arrangement, Ask
-from visionplan.solve.stacks import NO_RINGS, Stacks, stacks_of
+from visionplan.solve.stacks import Stacks, stacks_of
 
 DEFAULT_TRANSMITTANCE = 0.9
 
@@ -25,6 +26,10 @@ class Problem:
 
     brief: Brief
     catalogue: Catalogue
+    stop: float | None = None
+    """The f-number that every lens stands at, where one is given."""
+    stack: Stacks | None = None
+    """The one spacer stack there is, where it is given."""
 
     @cached_property
     def ask(self) -> Ask:
@@ -34,7 +39,10 @@ class Problem:
     @cached_property
     def lens(self) -> dict[str, np.ndarray]:
         """Symbol → array over the lenses; N is (lenses, stops), NaN where a lens has fewer stops."""
-        return _lens_symbols(self.catalogue.lenses)
+        symbols = _lens_symbols(self.catalogue.lenses)
+        if self.stop is not None:
+            symbols["N"] = np.full((len(self.catalogue.lenses), 1), self.stop)
+        return symbols
 
     @cached_property
     def camera(self) -> dict[str, np.ndarray]:
@@ -43,10 +51,7 @@ class Problem:
 
     @cached_property
     def flange(self) -> tuple[np.ndarray, np.ndarray]:
-        """Flange distances of cameras and of lenses such that their difference is right.
-
-        Two equal mounts that both leave it out differ by 0: each such mount has a stand-in of its own.
-        """
+        """Flange distances of cameras and of lenses: stated, else usual for the mount, else NaN."""
         return _flanges(self.catalogue.cameras), _flanges(self.catalogue.lenses)
 
     @cached_property
@@ -74,6 +79,11 @@ class Problem:
             names,
         )
 
+    @cached_property
+    def id_rank(self) -> tuple[np.ndarray, np.ndarray]:
+        """Place of each camera's and each lens's id among the ids in order."""
+        return _order(self.catalogue.cameras["id"]), _order(self.catalogue.lenses["id"])
+
     @property
     def camera_mounts(self) -> list[str]:
         """Mount of each camera, as the file words it."""
@@ -85,17 +95,30 @@ class Problem:
         return self.catalogue.lenses["mount"]
 
     @cached_property
-    def _stacks(self) -> dict[tuple[str, int], Stacks]:
+    def has_rings(self) -> bool:
+        """Whether there is any spacer stack but the empty one."""
+        return bool(len(self.catalogue.spacers)) or self.stack is not None
+
+    def stacks_by_thread(self, lenses: np.ndarray, cameras: int) -> Iterator[tuple[np.ndarray, Stacks]]:
+        """Positions in `lenses` (rows) and their spacer stacks when that many cameras share the rings."""
+        if not self.has_rings:
+            return
+        for number, name in enumerate(self.thread[2]):
+            here = np.flatnonzero(self.thread[1][lenses] == number)
+            if len(here):
+                yield here, self._stacks_of(name, cameras)
+
+    @cached_property
+    def _known_stacks(self) -> dict[tuple[str, int], Stacks]:
         return {}
 
-    def stacks(self, of_thread: str, cameras: int) -> Stacks:
-        """The spacer stacks of a thread when that many cameras share the rings."""
-        if not len(self.catalogue.spacers):
-            return NO_RINGS
+    def _stacks_of(self, of_thread: str, cameras: int) -> Stacks:
+        if self.stack is not None:
+            return self.stack
         key = of_thread, cameras
-        if key not in self._stacks:
-            self._stacks[key] = stacks_of(self.catalogue.spacers, of_thread, cameras)
-        return self._stacks[key]
+        if key not in self._known_stacks:
+            self._known_stacks[key] = stacks_of(self.catalogue.spacers, of_thread, cameras)
+        return self._known_stacks[key]
 
     def sides(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:
         """Length of every camera's sensor along the field's width and height."""
@@ -142,6 +165,7 @@ def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
         "detail": table["detail limit"],
         "lens_length": length,
         "lens_diameter": table["diameter"],
+        "distortion": table["distortion"],
         "circle": table["image circle"],
         "lens_mass": table["mass"],
         "lens_price": table["price"],
@@ -168,6 +192,12 @@ def _camera_symbols(table: Table, ask: Ask) -> dict[str, np.ndarray]:
         "camera_price": table["price"],
         "camera_stock": table["stock"],
     }
+
+
+def _order(ids: list[str]) -> np.ndarray:
+    rank = np.empty(len(ids), int)
+    rank[sorted(range(len(ids)), key=ids.__getitem__)] = np.arange(len(ids))
+    return rank
 
 
 def _unstated_flange(table: Table) -> np.ndarray:

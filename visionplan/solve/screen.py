@@ -83,6 +83,4 @@ def everything(judge: Judge, cameras: np.ndarray) -> Iterator[Rigs]:
         step = max(1, CHUNK // max(1, len(lenses)))
         for begin in range(0, len(here), step):
             some = here[begin : begin + step]
-            yield judge.rigs(
-                arrangement, np.repeat(some, len(lenses)), np.tile(lenses, len(some)), all_stacks=True
-            )
+            yield judge.rigs(arrangement, np.repeat(some, len(lenses)), np.tile(lenses, len(some)), all_stacks=True)

@@ -24,9 +24,6 @@ class Stacks:
     ids: tuple[tuple[str, ...], ...]
 
 
-NO_RINGS = Stacks(np.zeros(1), np.zeros(1, int), np.zeros(1), ((),))
-
-
 def stacks_of(spacers: Table, of_thread: str, cameras: int = 1) -> Stacks:
     """Stacks of up to three rings of a thread, when that many cameras share the rings.
 

@@ -1,0 +1,163 @@
+"""The search: the best rigs of a brief over a catalogue, in any order, without judging every pair in full.
+
+Each class of cameras with a lens has a bound on how good its rig may be; pairs are judged in full in the order of
+those bounds until no bound left can beat what is found.
+"""
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from time import perf_counter
+
+import numpy as np
+
+from visionplan.brief.model import Brief
+from visionplan.catalogue.items import Catalogue
+from visionplan.solve import screen, span
+from visionplan.solve.choose import Chosen, Items, choose
+from visionplan.solve.classes import Classes
+from visionplan.solve.concessions import concede_problem
+from visionplan.solve.contradictions import contradictions
+from visionplan.solve.demands import MISSED
+from visionplan.solve.judge import Judge
+from visionplan.solve.orders import ORDERS
+from visionplan.solve.problem import Problem
+from visionplan.solve.rig import Ranking
+from visionplan.solve.survey import Survey, classes_for, survey
+from visionplan.solve.writeup import rigs_of
+
+_BATCH = 512
+"""Pairs judged in full at first; each further batch is twice as large, up to _MOST."""
+_MOST = 1 << 14
+
+Key = list[np.ndarray]
+"""Columns to order pairs by, the first the most important; smaller is better."""
+
+
+@dataclass(frozen=True)
+class _Pairs:
+    """Classes of cameras with lenses, and a bound on the key of any of their pairs."""
+
+    classes: Classes
+    number: np.ndarray
+    lens: np.ndarray
+    bound: Key
+
+
+def rank(
+    brief: Brief, catalogue: Catalogue, order: str = "value", top: int = 20, concessions: bool | None = None
+) -> Ranking:
+    """The best rigs, one a pair; where fewer than `top` fit, the nearest misses follow.
+
+    Parameters
+    ----------
+    order : a name in `ORDERS`
+    top : how many rigs at most
+    concessions : whether to work them out; None for only when nothing fits
+    """
+    begin = perf_counter()
+    problem = Problem(brief, catalogue)
+    items = Items.of(problem)
+    found = survey(problem, items, order)
+    fitting = found.count(problem.camera["camera_price"], brief.strict)
+    judge = Judge(problem)
+    cameras, lenses = _best(judge, items, _fitting_pairs(found, order), _fitting_key(order), min(top, fitting), True)
+    if len(cameras) < top:
+        short = top - len(cameras)
+        misses = _best(judge, items, _missing_pairs(problem, items, order), _missing_key(order), short, False)
+        cameras, lenses = np.concatenate((cameras, misses[0])), np.concatenate((lenses, misses[1]))
+    rigs = rigs_of(judge, choose(judge, items, cameras, lenses)) if len(cameras) else ()
+    wanted = concessions if concessions is not None else not fitting
+    given = concede_problem(problem, fitting) if wanted else None
+    pairs = len(catalogue.cameras) * len(catalogue.lenses)
+    notes = contradictions(problem.ask)
+    return Ranking(brief, catalogue, order, pairs, fitting, rigs, given, perf_counter() - begin, notes)
+
+
+def _best(
+    judge: Judge, items: Items, pairs: _Pairs, key: Callable[[Chosen], Key], top: int, fits: bool
+) -> tuple[np.ndarray, np.ndarray]:
+    """Rows of cameras and lenses of the best `top` pairs that fit, or that don't, best first."""
+    camera, lens = np.zeros(0, int), np.zeros(0, int)
+    if not top or not len(pairs.number):
+        return camera, lens
+    keys: Key = []
+    # cameras of a class differ in nothing that the choice sees but the price, where a price is asked
+    most = None if judge.problem.brief.max_price is not None else top
+    ids = judge.problem.id_rank
+    queue, at, batch = np.lexsort(pairs.bound[::-1]), 0, _BATCH
+    each = np.minimum(pairs.classes.size[pairs.number], most or len(items.camera))[queue]
+    reached = np.cumsum(each)
+    while at < len(queue):
+        done = reached[at - 1] if at else 0
+        end = max(at + 1, int(np.searchsorted(reached, done + batch)))
+        some, at, batch = queue[at:end], end, min(2 * batch, _MOST)
+        position, cameras = pairs.classes.spread(pairs.number[some], most)
+        chosen = choose(judge, items, cameras, pairs.lens[some][position])
+        chosen = chosen.take(np.flatnonzero(chosen.fits == fits))
+        new = key(chosen)
+        keys = [np.concatenate(both) for both in zip(keys, new)] if keys else new
+        camera, lens = np.concatenate((camera, chosen.camera)), np.concatenate((lens, chosen.lens))
+        best = np.lexsort((ids[1][lens], ids[0][camera], *(span.tie_rank(column) for column in reversed(keys))))[:top]
+        camera, lens, keys = camera[best], lens[best], [column[best] for column in keys]
+        if (
+            len(camera) == top
+            and at < len(queue)
+            and _beyond([b[queue[at]] for b in pairs.bound], [k[-1] for k in keys])
+        ):
+            break
+    return camera, lens
+
+
+def _beyond(bound: list[float], worst: list[float]) -> bool:
+    """Whether a bound is worse than the worst key kept, by more than a tie."""
+    for b, k in zip(bound, worst):
+        b, k = (np.inf if np.isnan(value) else float(value) for value in (b, k))
+        if b != k and abs(b - k) > span.TIE * max(abs(b), abs(k), 1e-300):
+            return b > k
+    return False
+
+
+def _fitting_pairs(found: Survey, order: str) -> _Pairs:
+    bound = {"value": [found.grade, found.unknown, found.price], "price": [found.price]}.get(order, [found.figure])
+    return _Pairs(found.classes, found.number, found.lens, bound)
+
+
+def _fitting_key(order: str) -> Callable[[Chosen], Key]:
+    def key(chosen: Chosen) -> Key:
+        if order == "value":
+            return [chosen.grade, chosen.unknown, chosen.price, -(1 + chosen.latitude)]
+        if order == "price":
+            return [chosen.price, chosen.unknown]
+        named = ORDERS[order]
+        assert named
+        return [named.sign * chosen.gather(named.figure), chosen.unknown]
+
+    return key
+
+
+def _missing_key(order: str) -> Callable[[Chosen], Key]:
+    ordered = _fitting_key(order)
+    return lambda chosen: [chosen.misses_gate, chosen.shortfall, *ordered(chosen)]
+
+
+def _missing_pairs(problem: Problem, items: Items, order: str) -> _Pairs:
+    """Every class with every lens, by the least shortfall that any of its rigs may have.
+
+    Cameras that miss a gate of their own and cameras that don't are classes apart.
+    """
+    missing = items.camera == MISSED
+    classes = classes_for(problem, items, np.arange(len(missing)), order, apart=missing)
+    lenses = len(items.lens)
+    clear = np.full(len(classes) * lenses, np.inf)
+    least = np.full(len(classes) * lenses, np.inf)
+    for rigs in screen.everything(Judge(problem, frozenset({"price"})), classes.first):
+        pair = classes.number[rigs.cameras] * lenses + rigs.lenses
+        short = np.where(rigs.contrast < MISSED, rigs.short, np.inf).min(axis=1)
+        np.minimum.at(clear, pair, np.where(rigs.gates < MISSED, short, np.inf))
+        np.minimum.at(least, pair, rigs.short.min(axis=1))
+    number, lens = np.divmod(np.arange(len(least)), lenses)
+    gate = np.isinf(clear) | missing[classes.first][number] | (items.lens[lens] == MISSED)
+    limit = problem.brief.max_price
+    if limit is not None:
+        gate |= classes.cheapest[number] + problem.lens["lens_price"][lens] > limit * (1 + span.EDGE)
+    return _Pairs(classes, number, lens, [gate, np.where(gate, least, clear)])

@@ -1,0 +1,243 @@
+"""Writing up chosen rigs: every figure and verdict of each, as plain data."""
+
+from collections.abc import Sequence
+from typing import Any
+
+import numpy as np
+
+from visionplan.optics.depth import hyperfocal_distance
+from visionplan.solve import checks, figures, span
+from visionplan.solve.assumptions import assumptions
+from visionplan.solve.case import Case
+from visionplan.solve.choose import Chosen
+from visionplan.solve.demands import (
+    BY_NAME,
+    DEMANDS,
+    MET,
+    MISSED,
+    NOT_ASKED,
+    UNKNOWN,
+    VERDICTS,
+    Demand,
+)
+from visionplan.solve.demands import judge as judge_demand
+from visionplan.solve.gates import GATES, Gate, judge_gate
+from visionplan.solve.gates import price as rig_price
+from visionplan.solve.judge import Judge
+from visionplan.solve.rig import Contrast, Rig, Value, Verdict
+
+
+def rigs_of(judge: Judge, chosen: Chosen) -> tuple[Rig, ...]:
+    """Write up rigs, ranked as they stand."""
+    case = _case(judge, chosen)
+    m = chosen.point[:, None]
+    demands = [_demand_columns(demand, judge, case, m) for demand in DEMANDS]
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
+        shown = _figures(case, m)
+        contrast = figures.contrasts(case, m)
+    case.least_contrast = np.minimum.reduce(contrast)
+    gates = [_gate_columns(gate, judge, case) for gate in GATES]
+    return tuple(
+        _rig(chosen, number, case.row(number), demands, gates, shown, contrast) for number in range(len(chosen))
+    )
+
+
+def _case(judge: Judge, chosen: Chosen) -> Case:
+    """One case of all chosen rigs, each in its own arrangement: arrays of shape (rigs, 1)."""
+    blocks = [chosen.blocks[number] for number in chosen.block]
+    rows = list(zip(blocks, chosen.row, chosen.stop))
+    column = lambda values: np.array(list(values))[:, None]  # noqa: E731
+    covered = [judge.problem.ask.covered(block.arrangement) for block in blocks]
+    return Case(
+        judge.problem,
+        chosen.camera,
+        chosen.lens,
+        W=column(c[0] for c in covered),
+        H=column(c[1] for c in covered),
+        g=column(judge.problem.ask.slack(block.arrangement) for block in blocks),
+        nx=column(block.arrangement.nx for block in blocks),
+        ny=column(block.arrangement.ny for block in blocks),
+        portrait=column(block.arrangement.portrait for block in blocks),
+        w=column(block.case.w[row, 0] for block, row, _ in rows),
+        h=column(block.case.h[row, 0] for block, row, _ in rows),
+        N=column(block.case.N[row, stop] for block, row, stop in rows),
+        rings=column(block.case.rings[row, 0] for block, row, _ in rows),
+        ring_price=column(block.case.ring_price[row, 0] for block, row, _ in rows),
+    )
+
+
+def _figures(case: Case, m) -> dict[str, np.ndarray]:
+    hyperfocal = np.where(case.telecentric, np.nan, hyperfocal_distance(case.f, case.N, case.P))
+    corner = figures.signal_to_noise_at(case, m, corner=True)
+    table = {
+        "magnification": m,
+        "working_distance": case.WD(m),
+        "sampling": case.P / m,
+        "width": np.where(case.line & (case.W == 0), np.nan, case.w / m),
+        "height": np.where(case.line & (case.H == 0), np.nan, case.h / m),
+        "nearer": checks.near_depth(case, m),
+        "farther": checks.far_depth(case, m),
+        "exposure": figures.exposure(case, m),
+        "snr": figures.signal_to_noise_at(case, m),
+        "snr_corner": corner,
+        "needed_illuminance": figures.needed_illuminance(case, m),
+        "hyperfocal": hyperfocal,
+        "length": case.length(m),
+        "price": rig_price(case),
+    }
+    return {name: np.broadcast_to(values, m.shape)[:, 0] for name, values in table.items()}
+
+
+def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, Any]:
+    """Bounds, code, asked and got of one demand for every rig."""
+    rigs = len(m)
+    if demand not in judge.demands:
+        return {"lo": np.zeros(rigs), "hi": np.full(rigs, np.inf), "code": np.full(rigs, NOT_ASKED)}
+    lo, hi, code = judge_demand(demand, case)
+    lacks = _flat(demand.lacks(case), rigs)
+    lo, hi, code = _flat(lo, rigs), _flat(hi, rigs), _flat(code, rigs)
+    at = m[:, 0]
+    with np.errstate(invalid="ignore", divide="ignore", over="ignore"):
+        outside = ~(span.holds(lo, at) & span.holds(at, hi)) & np.isfinite(at)
+        got = _flat(demand.check(case, m), rigs)
+    code = np.where((code == MET) & outside, MISSED, code)
+    asked = demand.asked(case)
+    asked = list(zip(*(_flat(end, rigs) for end in asked))) if isinstance(asked, tuple) else _flat(asked, rigs)
+    return {"lo": lo, "hi": hi, "code": code, "asked": asked, "got": got, "lacks": lacks}
+
+
+def _gate_columns(gate: Gate, judge: Judge, case: Case) -> np.ndarray:
+    rigs = len(case.cameras)
+    if gate not in judge.gates:
+        return np.full(rigs, NOT_ASKED)
+    if gate.of == "camera":
+        return judge_gate(gate, judge.problem)[case.cameras]
+    if gate.of == "lens":
+        return judge_gate(gate, judge.problem)[case.lenses]
+    codes = _flat(judge_gate(gate, case), rigs)
+    return np.where(np.isnan(case.least_contrast[:, 0]), MISSED, codes) if gate.of == "stop" else codes
+
+
+def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast) -> Rig:
+    fits = bool(chosen.fits[number])
+    figure = {name: _known(values[number]) for name, values in shown.items()}
+    verdicts = [_verdict(demand, columns, number) for demand, columns in zip(DEMANDS, demands)]
+    verdicts += [_gate_verdict(gate, int(codes[number]), one) for gate, codes in zip(GATES, gates)]
+    block, row = chosen.blocks[chosen.block[number]], chosen.row[number]
+    bounds = {d.name: (float(c["lo"][number]), float(c["hi"][number])) for d, c in zip(DEMANDS, demands)}
+    whole = _ends(bounds)
+    never = whole[0][0] == np.inf or whole[1][0] == 0
+    stops = [float(n) for n, ok in zip(block.case.N[row], block.fits[row]) if ok] if fits else []
+    m = figure["magnification"]
+    lacking = [d.name for d, c in zip(DEMANDS, demands) if c["code"][number] != NOT_ASKED and c["lacks"][number]]
+    return Rig(
+        rank=number + 1,
+        camera=one.problem.catalogue.cameras["id"][one.cameras],
+        lens=one.problem.catalogue.lenses["id"][one.lenses],
+        spacers=_spacers(block, row),
+        extension=float(one.rings),
+        orientation="portrait" if one.portrait else "landscape",
+        grid=(int(one.nx), int(one.ny)),
+        stop=float(one.N),
+        stops=tuple(stops),
+        fits=fits,
+        grade=span.GRADES[int(chosen.grade[number])] if fits else None,
+        unknown=tuple(lacking + [v.name for v in verdicts if v.gate and v.verdict == VERDICTS[UNKNOWN]]),
+        span=None if never else (whole[0][0], whole[1][0]),
+        latitude=float(chosen.latitude[number]),
+        shortfall=float(chosen.shortfall[number]),
+        pinch=None if never else _pinch(bounds, whole, one),
+        held=_held(bounds, one) if fits else None,
+        magnification=m,
+        working_distance=figure["working_distance"],
+        sampling=figure["sampling"],
+        field=(figure["width"], figure["height"]),
+        depth=(figure["nearer"], figure["farther"]),
+        exposure=figure["exposure"],
+        snr=figure["snr"],
+        snr_corner=figure["snr_corner"],
+        needed_illuminance=figure["needed_illuminance"],
+        contrast=None if m is None else Contrast(*(float(value[number, 0]) for value in contrast)),
+        hyperfocal=figure["hyperfocal"],
+        length=figure["length"],
+        price=figure["price"],
+        demands=tuple(verdicts),
+        assumptions=assumptions(one, m, figure["snr_corner"]),
+        missed_gates=tuple(v.name for v in verdicts if v.gate and v.verdict == VERDICTS[MISSED]),
+        case=one,
+    )
+
+
+def _spacers(block, row: int) -> tuple[str, ...]:
+    lens = block.lenses[row : row + 1]
+    for _, stacks in block.case.problem.stacks_by_thread(lens, block.arrangement.cameras):
+        return stacks.ids[block.stack[row]]
+    return ()
+
+
+def _verdict(demand: Demand, columns: dict[str, Any], number: int) -> Verdict:
+    code = int(columns["code"][number])
+    if code == NOT_ASKED:
+        return Verdict(demand.name, None, None, None, None, demand.unit, VERDICTS[code])
+    lo, hi = float(columns["lo"][number]), float(columns["hi"][number])
+    never = lo == np.inf or hi == 0
+    asked = columns["asked"][number]
+    return Verdict(
+        demand.name,
+        None if never or lo == 0 else lo,
+        None if never or hi == np.inf else hi,
+        tuple(map(float, asked)) if isinstance(asked, tuple) else _known(asked),  # type: ignore[arg-type]
+        _known(columns["got"][number]),
+        demand.unit,
+        VERDICTS[code],
+        never=never,
+    )
+
+
+def _gate_verdict(gate: Gate, code: int, one: Case) -> Verdict:
+    if code == NOT_ASKED:
+        return Verdict(gate.name, None, None, None, None, gate.unit, VERDICTS[code], gate=True)
+    asked, got = gate.asked(one), gate.got(one)
+    return Verdict(gate.name, None, None, _word(asked), _word(got), gate.unit, VERDICTS[code], gate=True)
+
+
+def _word(value: Any) -> Value:
+    return value if isinstance(value, str) else _known(value)
+
+
+def _known(value: Any) -> float | None:
+    return float(value) if np.isfinite(value) else None
+
+
+def _ends(bounds: dict[str, tuple[float, float]], names: Sequence[str] | None = None):
+    """((lo, its demand), (hi, its demand)) of the intersection; of equal ones the first in the table."""
+    chosen = [(name, *bounds[name]) for name in names or bounds]
+    lo, hi = max(entry[1] for entry in chosen), min(entry[2] for entry in chosen)
+    low = next(name for name, low, _ in chosen if low == lo or low >= lo * (1 - span.TIE))
+    high = next(name for name, _, high in chosen if high == hi or high <= hi * (1 + span.TIE))
+    return (lo, low), (hi, high)
+
+
+_PICTURE = tuple(name for name, demand in BY_NAME.items() if not demand.place)
+
+
+def _pinch(bounds, whole, one: Case) -> tuple[str, str]:
+    empty = not span.fits(whole[0][0], whole[1][0], one.M)
+    low, high = whole if empty else _ends(bounds, _PICTURE)
+    return low[1], high[1]
+
+
+def _held(bounds, one: Case) -> str | None:
+    """The place demand that keeps the working point off the middle of the picture demands."""
+    if not np.isnan(one.M):
+        return None
+    (lo_p, _), (hi_p, _) = _ends(bounds, _PICTURE)
+    (lo, low), (hi, high) = _ends(bounds, [name for name in BY_NAME if name not in _PICTURE])
+    middle = float(np.sqrt(lo_p * hi_p))
+    if not span.holds(lo, middle):
+        return low
+    return high if not span.holds(middle, hi) else None
+
+
+def _flat(values, count: int) -> np.ndarray:
+    return np.broadcast_to(np.reshape(values, -1) if np.ndim(values) else values, count)

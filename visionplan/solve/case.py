@@ -32,7 +32,7 @@ SYMBOLS: dict[str, tuple[str, str]] = {
     "p": ("pupil ratio, exit over entrance", ""),
     "a": ("lens front to front principal plane", "mm"),
     "x": ("travel of the focus ring", "mm"),
-    "M": ("magnification of a telecentric lens", ""),
+    "M": ("the one magnification of a telecentric lens, or of a rig that stands already", ""),
     "WD_stated": ("working distance of a telecentric lens", "mm"),
     "WD_room": ("its tolerance", "mm"),
     "telecentricity": ("greatest angle of a chief ray to the axis", "rad"),

@@ -88,7 +88,7 @@ class Rigs:
     @cached_property
     def unknown(self) -> np.ndarray:
         """Whether a demand or a gate of the pair is unknown, of each rig."""
-        return _flat(self.bounds.unknown, len(self.cameras)) | self.gates_unknown
+        return np.asarray(self.bounds.unknown).any(axis=-1) | self.gates_unknown
 
     @cached_property
     def fits_span(self) -> np.ndarray:

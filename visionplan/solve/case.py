@@ -124,6 +124,12 @@ class Case:
             extension = np.where(self.telecentric, self.rings, self.f * m - self.d)
         return self.WD(m) + self.lens_length + extension + self.camera_length
 
+    def pick(self, arrangement: Arrangement, rows: np.ndarray, stops: np.ndarray) -> "Case":
+        """The case of some rigs of one arrangement, each at one stop: arrays of shape (picked, 1)."""
+        rings = self.rings[rows] if np.ndim(self.rings) else self.rings
+        cameras, lenses, N = self.cameras[rows], self.lenses[rows], self.N[rows, stops][:, None]
+        return case_of(self.problem, arrangement, cameras, lenses, N=N, rings=rings)
+
     def row(self, index: int, stop: int | None = None) -> "Case":
         """The case of one rig, of scalars; with a stop's number also its f-number is one."""
         one = Case(self.problem, None, None)

@@ -148,7 +148,8 @@ def _columns(
     fits = rigs.fits & (pair_code < MISSED)[:, None]
     stop = best_stop(rigs, fits)
     fit = fits.any(axis=1)
-    code = np.maximum(np.maximum(pair_code, rigs.gates), rigs.contrast[rows, stop])
+    contrast = rigs.contrast(rows, stop)
+    code = np.maximum(np.maximum(pair_code, rigs.gates), contrast)
     arrangement = rigs.arrangement
     counted = np.zeros(len(rows), int)
     for here, stacks in problem.stacks_by_thread(rigs.lenses, arrangement.cameras):
@@ -163,7 +164,7 @@ def _columns(
         "shortfall": np.where(fit, 0.0, rigs.short[rows, stop]),
         "grade": np.where(fit, span.grade(rigs.room, problem.brief.comfort)[rows, stop], len(span.GRADES)),
         "latitude": np.where(fit, rigs.room[rows, stop], 0.0),
-        "unknown": rigs.unknown | (rigs.contrast[rows, stop] == UNKNOWN),
+        "unknown": rigs.unknown | (contrast == UNKNOWN),
         "price": price(rigs.case)[:, 0],
         "count": np.full(len(rows), arrangement.cameras),
         "rings": counted,

@@ -112,20 +112,22 @@ class Rigs:
         short = span.shortfall(self.bounds.lo, self.bounds.hi, self.case.M)
         return np.where(np.isfinite(self.case.N), short, np.inf)
 
-    @cached_property
-    def contrast(self) -> np.ndarray:
-        """Code of the contrast gate of each stop; MET where it isn't asked."""
+    def contrast(self, rows: np.ndarray, stops: np.ndarray) -> np.ndarray:
+        """Code of the contrast gate at some rigs' stops; MET where it isn't asked."""
         if not self.judges_contrast:
-            return np.full(self.fits_span.shape, MET)
-        with np.errstate(invalid="ignore"):
-            self.case.least_contrast = np.minimum.reduce(contrasts(self.case, self.point))
-        return np.where(np.isfinite(self.point), judge_gate(_CONTRAST, self.case), MISSED)
+            return np.full(len(rows), MET)
+        some, point = self.case.pick(self.arrangement, rows, stops), self.point[rows, stops][:, None]
+        some.least_contrast = np.minimum.reduce(contrasts(some, point))
+        return np.where(np.isfinite(point), judge_gate(_CONTRAST, some), MISSED)[:, 0]
 
     @cached_property
     def fits(self) -> np.ndarray:
         """Whether a stop fits, gates of the pair included; gates of camera or lens alone are not."""
         fits = self.fits_span & (self.gates < MISSED)[:, None]
-        return fits & (self.contrast < MISSED) if self.judges_contrast and fits.any() else fits
+        if self.judges_contrast:
+            rows, stops = np.nonzero(fits)
+            fits[rows, stops] = self.contrast(rows, stops) < MISSED
+        return fits
 
     @cached_property
     def grade(self) -> np.ndarray:

@@ -25,7 +25,7 @@ from visionplan.solve.rig import Ranking
 from visionplan.solve.survey import Survey, classes_for, survey
 from visionplan.solve.writeup import rigs_of
 
-_BATCH = 512
+_BATCH = 64
 """Pairs judged in full at first; each further batch is twice as large, up to _MOST."""
 _MOST = 1 << 14
 
@@ -152,7 +152,7 @@ def _missing_pairs(problem: Problem, items: Items, order: str) -> _Pairs:
     least = np.full(len(classes) * lenses, np.inf)
     for rigs in screen.everything(Judge(problem, frozenset({"price"})), classes.first):
         pair = classes.number[rigs.cameras] * lenses + rigs.lenses
-        short = np.where(rigs.contrast < MISSED, rigs.short, np.inf).min(axis=1)
+        short = np.where(rigs.fits_span & ~rigs.fits, np.inf, rigs.short).min(axis=1)
         np.minimum.at(clear, pair, np.where(rigs.gates < MISSED, short, np.inf))
         np.minimum.at(least, pair, rigs.short.min(axis=1))
     number, lens = np.divmod(np.arange(len(least)), lenses)

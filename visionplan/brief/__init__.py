@@ -1,0 +1,1 @@
+"""The brief: what a cell asks for, and its file."""

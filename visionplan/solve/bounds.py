@@ -109,7 +109,7 @@ def light(case: Case):
         room = np.sqrt(plenty) - 1
         hi = np.where(case.psi == 0, np.where(plenty >= 1 - EDGE, np.inf, 0.0), room / case.psi)
         hi = np.where(np.isinf(plenty), np.inf, hi)
-        if case.ask.v and case.brief.pulse is None:
+        if case.ask.v and case.brief.pulse is None and np.any(case.line):
             period = np.where(case.line, _line_period_root(fastest * case.P / (case.v * needed), case.psi), np.inf)
             hi = np.minimum(hi, period)
     return _unless(possible & (hi > 0), 0.0, hi)

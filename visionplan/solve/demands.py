@@ -61,7 +61,7 @@ class Demand:
     """The lines of the brief whose dropping drops it."""
     place: bool = False
     of: str = "pair"
-    """lens: the bound needs no camera; pair: it does."""
+    """What the bound is of: lens (with its stop, but without the camera), pair (whatever the stop), or rig."""
     applies: Callable[[Case], Any] = lambda case: True
     """Whether it is asked of these rigs, where that depends on the rig."""
     lacks: Callable[[Case], Any] = lambda case: False
@@ -277,6 +277,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("N", "p", "P", "tau", "eta", "variance", "saturation"),
         "EMVA 1288 (linear); Lambertian part",
         ("light.snr",),
+        of="rig",
         lacks=lambda case: (
             np.isnan(case.eta)
             | (

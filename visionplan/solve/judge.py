@@ -36,12 +36,22 @@ class Bounds:
     def add(self, demand: Demand, case: Case) -> "Bounds":
         """These and one demand more."""
         lo, hi, code = judge(demand, case)
-        unknown = self.unknown | (code == UNKNOWN)
+        unknown = self.unknown | (code == UNKNOWN).any(axis=-1, keepdims=True)
         if demand.place:
             lo, hi = np.maximum(self.lo_place, lo), np.minimum(self.hi_place, hi)
             return replace(self, lo_place=lo, hi_place=hi, unknown=unknown)
         lo, hi = np.maximum(self.lo_p, lo), np.minimum(self.hi_p, hi)
         return replace(self, lo_p=lo, hi_p=hi, unknown=unknown)
+
+    def both(self, other: "Bounds") -> "Bounds":
+        """These and others."""
+        return Bounds(
+            np.maximum(self.lo_p, other.lo_p),
+            np.minimum(self.hi_p, other.hi_p),
+            np.maximum(self.lo_place, other.lo_place),
+            np.minimum(self.hi_place, other.hi_place),
+            self.unknown | other.unknown,
+        )
 
     def take(self, rows: np.ndarray) -> "Bounds":
         """Of some rows."""
@@ -88,7 +98,7 @@ class Rigs:
     @cached_property
     def unknown(self) -> np.ndarray:
         """Whether a demand or a gate of the pair is unknown, of each rig."""
-        return np.asarray(self.bounds.unknown).any(axis=-1) | self.gates_unknown
+        return _flat(self.bounds.unknown, len(self.cameras)) | self.gates_unknown
 
     @cached_property
     def fits_span(self) -> np.ndarray:
@@ -143,22 +153,35 @@ class Judge:
         self.drop = drop
         self.demands = asked_demands(problem.ask, drop)
         self.gates = asked_gates(problem.ask, drop)
-        self._of_lens: dict[float, Bounds] = {}
+        self._lenses: dict[float, tuple] = {}
 
     def lens_bounds(self, arrangement: Arrangement) -> Bounds:
         """What belongs to lens and stop alone, for every lens: shape (lenses, stops)."""
+        return self._of_lens(arrangement)[0]
+
+    def lens_span(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:
+        """The same as (lo, hi), a telecentric lens's magnification included; (inf, 0) where nothing is left."""
+        return self._of_lens(arrangement)[1]
+
+    def lens_ends(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:
+        """Least lo and greatest hi of each lens over its stops: shape (lenses, 1)."""
+        return self._of_lens(arrangement)[2]
+
+    def _of_lens(self, arrangement: Arrangement):
         slack = self.problem.ask.slack(arrangement)
-        if slack not in self._of_lens:
-            lenses = np.arange(len(self.problem.catalogue.lenses))
-            case = case_of(self.problem, arrangement, lenses=lenses)
-            bounds = Bounds(
-                np.zeros(case.N.shape), np.full(case.N.shape, np.inf), unknown=np.zeros((len(lenses), 1), bool)
-            )
+        if slack not in self._lenses:
+            every = np.arange(len(self.problem.catalogue.lenses))
+            case = case_of(self.problem, arrangement, lenses=every)
+            bounds = Bounds(np.zeros(case.N.shape), np.full(case.N.shape, np.inf))
             for demand in self.demands:
                 if demand.of == "lens":
                     bounds = bounds.add(demand, case)
-            self._of_lens[slack] = bounds
-        return self._of_lens[slack]
+            lo, hi = np.fmax(bounds.lo, case.M), np.fmin(bounds.hi, case.M)
+            possible = span.holds(lo, hi) & np.isfinite(case.N)
+            lo, hi = np.where(possible, lo, np.inf), np.where(possible, hi, 0.0)
+            ends = lo.min(axis=1, keepdims=True), hi.max(axis=1, keepdims=True)
+            self._lenses[slack] = bounds, (lo, hi), ends
+        return self._lenses[slack]
 
     def rigs(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray, all_stacks=False) -> Rigs:
         """Judge cameras with lenses, row by row.
@@ -166,16 +189,27 @@ class Judge:
         Of the spacer stacks those that let a rig fit are kept, and where none does the nearest; with `all_stacks`
         every one that could be chosen when no rig fits either.
         """
-        case = case_of(self.problem, arrangement, cameras, lenses, rings=0.0, ring_price=0.0)
-        bounds = self.lens_bounds(arrangement).take(lenses)
+        case = self._bare(arrangement, cameras, lenses)
+        of_pair = Bounds()
         for demand in self.demands:
-            if demand.of == "pair" and demand is not _TRAVEL:
+            if demand.of == "pair" and (demand is not _TRAVEL or not self.problem.has_rings):
+                of_pair = of_pair.add(demand, case)
+        source = np.arange(len(cameras))
+        if not all_stacks:
+            source = self._possible(arrangement, lenses, of_pair)
+            case, of_pair = self._bare(arrangement, cameras[source], lenses[source]), of_pair.take(source)
+        bounds = self.lens_bounds(arrangement).take(case.lenses).both(of_pair)
+        for demand in self.demands:
+            if demand.of == "rig":
                 bounds = bounds.add(demand, case)
-        case, bounds, stack, source = self._with_stacks(arrangement, case, bounds, all_stacks)
-        if _TRAVEL in self.demands:
-            bounds = bounds.add(_TRAVEL, case)
-        if _HEADROOM in self.demands and case.telecentric.any():  # its rings count, and they only make it longer
-            bounds = bounds.add(_HEADROOM, case)
+        stack = np.zeros(len(source), int)
+        if self.problem.has_rings:
+            case, bounds, stack, row = self._with_stacks(arrangement, case, bounds, all_stacks)
+            source = source[row]
+            if _TRAVEL in self.demands:
+                bounds = bounds.add(_TRAVEL, case)
+            if _HEADROOM in self.demands and case.telecentric.any():  # its rings count, and they only make it longer
+                bounds = bounds.add(_HEADROOM, case)
         gates, unknown = np.full(len(case.cameras), MET), np.zeros(len(case.cameras), bool)
         for gate in self.gates:
             if gate.of == "pair":
@@ -183,25 +217,44 @@ class Judge:
                 gates, unknown = np.maximum(gates, codes), unknown | (codes == UNKNOWN)
         return Rigs(arrangement, case, bounds, stack, gates, unknown, source, _CONTRAST in self.gates)
 
+    def _bare(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray) -> Case:
+        none = np.zeros((len(cameras), 1))
+        return case_of(self.problem, arrangement, cameras, lenses, rings=none, ring_price=none)
+
+    def _possible(self, arrangement: Arrangement, lenses: np.ndarray, of_pair: Bounds) -> np.ndarray:
+        """Rows whose pair demands leave something to some stop of the lens."""
+        lo, hi = (np.broadcast_to(end, (len(lenses), 1))[:, 0] for end in (of_pair.lo, of_pair.hi))
+        least, most = (end[lenses, 0] for end in self.lens_ends(arrangement))
+        left = np.flatnonzero(span.holds(np.maximum(lo, least), np.minimum(hi, most)))
+        possible = np.zeros(len(lenses), bool)
+        of_lens_lo, of_lens_hi = self.lens_span(arrangement)
+        stops = of_lens_lo.shape[1]
+        for stop in sorted(range(stops), key=lambda stop: abs(stop - stops // 2)):  # the middle ones fit most often
+            low = np.maximum(lo[left], of_lens_lo[lenses[left], stop])
+            high = np.minimum(hi[left], of_lens_hi[lenses[left], stop])
+            holds = span.holds(low, high)
+            possible[left[holds]] = True
+            left = left[~holds]
+        return np.flatnonzero(possible)
+
     def _with_stacks(self, arrangement: Arrangement, case: Case, bounds: Bounds, all_stacks: bool):
         """The rigs, one for each spacer stack that can matter."""
         rows = [np.arange(len(case.cameras))]
         stack = [np.zeros(len(case.cameras), int)]
-        if self.problem.has_rings and len(case.cameras):
-            low, high = _extensions(case, bounds, all_stacks)
-            for here, stacks in self.problem.stacks_by_thread(case.lenses, arrangement.cameras):
-                length = stacks.length
-                if len(length) == 1:
-                    continue
-                first = np.searchsorted(length, low[here] - 1e-9, "left")
-                last = np.searchsorted(length, high[here] + 1e-9, "right")
-                if all_stacks:
-                    first, last = np.maximum(first - 1, 0), np.minimum(last + 1, len(length))
-                first = np.maximum(first, 1)  # the empty stack is there already
-                count = np.maximum(last - first, 0)
-                rows.append(np.repeat(here, count))
-                begin = np.cumsum(count) - count
-                stack.append(np.arange(count.sum()) - np.repeat(begin - first, count))
+        low, high = _extensions(case, bounds, all_stacks)
+        for here, stacks in self.problem.stacks_by_thread(case.lenses, arrangement.cameras):
+            length = stacks.length
+            if len(length) == 1:
+                continue
+            first = np.searchsorted(length, low[here] - 1e-9, "left")
+            last = np.searchsorted(length, high[here] + 1e-9, "right")
+            if all_stacks:
+                first, last = np.maximum(first - 1, 0), np.minimum(last + 1, len(length))
+            first = np.maximum(first, 1)  # the empty stack is there already
+            count = np.maximum(last - first, 0)
+            rows.append(np.repeat(here, count))
+            begin = np.cumsum(count) - count
+            stack.append(np.arange(count.sum()) - np.repeat(begin - first, count))
         row, chosen = np.concatenate(rows), np.concatenate(stack)
         rings, price = np.zeros((len(row), 1)), np.zeros((len(row), 1))
         for here, stacks in self.problem.stacks_by_thread(case.lenses[row], arrangement.cameras):
@@ -220,7 +273,7 @@ def _extensions(case: Case, bounds: Bounds, all_stacks: bool):
         shorter, longer = np.minimum(lo, hi), np.maximum(lo, hi)
         low = np.where(case.telecentric, -0.01, case.f * shorter - case.x) - case.d
         high = np.where(case.telecentric, 0.01, case.f * longer) - case.d
-    stop = np.isfinite(case.N)
+    stop = np.isfinite(case.N) & (lo < np.inf) & (hi > 0)
     if not all_stacks:
         stop = stop & span.holds(lo, hi)
     low = np.where(stop & ~np.isnan(low), low, np.inf).min(axis=1)

@@ -5,7 +5,8 @@ NaN stands for a value that the catalogue leaves out and that has no default: wh
 
 from collections.abc import Iterator
 from dataclasses import dataclass
-from functools import cached_property
+from functools import cached_property, lru_cache
+from math import isnan
 
 import numpy as np
 
@@ -140,7 +141,7 @@ def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
         ring = np.where(np.isnan(nearest), np.where(reach > 0, f * f / reach, np.nan), f * nearest)
     ratio = table["pupil ratio"]
     lists = [
-        listed or stops_between(low, None if np.isnan(high) else high)
+        listed or _full_stops(low, high)
         for listed, low, high in zip(
             table["stops"], table["f-number min"].tolist(), table["f-number max"].tolist(), strict=True
         )
@@ -171,6 +172,11 @@ def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
         "lens_price": table["price"],
         "lens_stock": table["stock"],
     }
+
+
+@lru_cache(maxsize=4096)
+def _full_stops(low: float, high: float) -> tuple[float, ...]:
+    return stops_between(low, None if isnan(high) else high)
 
 
 def _camera_symbols(table: Table, ask: Ask) -> dict[str, np.ndarray]:

@@ -9,15 +9,13 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from visionplan.solve import span
 from visionplan.solve.ask import Arrangement
-from visionplan.solve.case import case_of
 from visionplan.solve.demands import MISSED
 from visionplan.solve.judge import Judge, Rigs
 
 ROOM = 1e-9
 """Relative room of the screen, so that rounding can't lose a rig."""
-CHUNK = 1 << 15
+CHUNK = 1 << 14
 """Rigs judged at a time, so that their arrays stay in the cache."""
 
 
@@ -46,18 +44,14 @@ def candidates(judge: Judge, arrangement: Arrangement, cameras: np.ndarray, lens
         circle = problem.lens["circle"]
         circle = np.where(np.isnan(circle), 0.0 if problem.brief.strict else np.inf, circle)
         pairs &= image[:, None] <= circle * (1 + ROOM)
-    camera, lens = np.nonzero(pairs)
+    camera, lens = np.divmod(np.flatnonzero(pairs), len(most))
     return cameras[camera], lens
 
 
 def _lens_ends(judge: Judge, arrangement: Arrangement):
     """Of each lens, over its stops: Hi/(1 + B/u(Hi)), the greatest m_s, and Lo/(1 − A/u(Lo)), the least r."""
-    bounds, problem = judge.lens_bounds(arrangement), judge.problem
-    case = case_of(problem, arrangement, lenses=np.arange(len(problem.catalogue.lenses)))
-    lo, hi = np.fmax(bounds.lo, case.M), np.fmin(bounds.hi, case.M)
-    possible = span.holds(lo, hi) & np.isfinite(case.N)
-    lo = np.where(possible, lo, np.inf).min(axis=1)
-    hi = np.where(possible, hi, 0.0).max(axis=1)
+    problem = judge.problem
+    lo, hi = (end[:, 0] for end in judge.lens_ends(arrangement))
     f, p = problem.lens["f"], problem.lens["p"]
     with np.errstate(divide="ignore", invalid="ignore"):
         most = np.where(hi > 0, hi / (1 + problem.ask.B / (f * (1 / hi + 1 / p))), -np.inf)

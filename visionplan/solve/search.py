@@ -4,7 +4,7 @@ Each class of cameras with a lens has a bound on how good its rig may be; pairs 
 those bounds until no bound left can beat what is found.
 """
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from time import perf_counter
 
@@ -25,9 +25,10 @@ from visionplan.solve.rig import Ranking
 from visionplan.solve.survey import Survey, classes_for, survey
 from visionplan.solve.writeup import rigs_of
 
-_BATCH = 64
-"""Pairs judged in full at first; each further batch is twice as large, up to _MOST."""
-_MOST = 1 << 14
+_BATCH, _MOST = 64, 1 << 14
+"""Least and greatest number of pairs judged in full at a time."""
+_CLASSES = 256
+"""Classes with lenses spread into their cameras at first; twice as many each time."""
 
 Key = list[np.ndarray]
 """Columns to order pairs by, the first the most important; smaller is better."""
@@ -41,6 +42,8 @@ class _Pairs:
     number: np.ndarray
     lens: np.ndarray
     bound: Key
+    priced: bool
+    """Whether the last column of the bound is the price of the class's cheapest camera."""
 
 
 def rank(
@@ -78,34 +81,54 @@ def _best(
 ) -> tuple[np.ndarray, np.ndarray]:
     """Rows of cameras and lenses of the best `top` pairs that fit, or that don't, best first."""
     camera, lens = np.zeros(0, int), np.zeros(0, int)
-    if not top or not len(pairs.number):
-        return camera, lens
     keys: Key = []
-    # cameras of a class differ in nothing that the choice sees but the price, where a price is asked
-    most = None if judge.problem.brief.max_price is not None else top
     ids = judge.problem.id_rank
-    queue, at, batch = np.lexsort(pairs.bound[::-1]), 0, _BATCH
-    each = np.minimum(pairs.classes.size[pairs.number], most or len(items.camera))[queue]
-    reached = np.cumsum(each)
-    while at < len(queue):
-        done = reached[at - 1] if at else 0
-        end = max(at + 1, int(np.searchsorted(reached, done + batch)))
-        some, at, batch = queue[at:end], end, min(2 * batch, _MOST)
-        position, cameras = pairs.classes.spread(pairs.number[some], most)
-        chosen = choose(judge, items, cameras, pairs.lens[some][position])
+    for cameras, lenses, bound in _batches(judge, pairs, top) if top else ():
+        if len(camera) == top and _beyond([b[0] for b in bound], [k[-1] for k in keys]):
+            break
+        chosen = choose(judge, items, cameras, lenses)
         chosen = chosen.take(np.flatnonzero(chosen.fits == fits))
         new = key(chosen)
         keys = [np.concatenate(both) for both in zip(keys, new)] if keys else new
         camera, lens = np.concatenate((camera, chosen.camera)), np.concatenate((lens, chosen.lens))
         best = np.lexsort((ids[1][lens], ids[0][camera], *(span.tie_rank(column) for column in reversed(keys))))[:top]
         camera, lens, keys = camera[best], lens[best], [column[best] for column in keys]
-        if (
-            len(camera) == top
-            and at < len(queue)
-            and _beyond([b[queue[at]] for b in pairs.bound], [k[-1] for k in keys])
-        ):
-            break
     return camera, lens
+
+
+def _batches(judge: Judge, pairs: _Pairs, top: int) -> Iterator[tuple[np.ndarray, np.ndarray, Key]]:
+    """Rows of cameras and lenses in the order of their bounds, with these: no later one's is better.
+
+    Classes are spread into their cameras little by little: what is spread and worse than the next class waits.
+    """
+    price = judge.problem.camera["camera_price"]
+    # cameras of a class differ in nothing that the choice sees but the price, where a price is asked
+    most = None if judge.problem.brief.max_price is not None else top
+    queue = np.lexsort(pairs.bound[::-1])
+    at, spread, batch = 0, _CLASSES, min(max(_BATCH, top), _MOST)
+    waiting = np.zeros(0, int), np.zeros(0, int), [np.zeros(0) for _ in pairs.bound]
+    while at < len(queue) or len(waiting[0]):
+        some, at, spread = queue[at : at + spread], min(at + spread, len(queue)), 2 * spread
+        position, cameras = pairs.classes.spread(pairs.number[some], most)
+        bound = [column[some][position].astype(float) for column in pairs.bound]
+        if pairs.priced:
+            bound[-1] += np.nan_to_num(
+                price[cameras] - pairs.classes.cheapest[pairs.number[some]][position], nan=np.inf
+            )
+        cameras, lenses = (
+            np.concatenate((waiting[0], cameras)),
+            np.concatenate((waiting[1], pairs.lens[some][position])),
+        )
+        bound = [np.concatenate(both) for both in zip(waiting[2], bound)]
+        order, ready = np.lexsort(bound[::-1]), len(cameras)
+        if at < len(queue):
+            following = [np.append(column, of_pair[queue[at]]) for column, of_pair in zip(bound, pairs.bound)]
+            ready = int(np.flatnonzero(np.lexsort(following[::-1]) == ready)[0])
+        cameras, lenses, bound = cameras[order], lenses[order], [column[order] for column in bound]
+        for begin in range(0, ready, batch):
+            end = min(begin + batch, ready)
+            yield cameras[begin:end], lenses[begin:end], [column[begin:end] for column in bound]
+        waiting = cameras[ready:], lenses[ready:], [column[ready:] for column in bound]
 
 
 def _beyond(bound: list[float], worst: list[float]) -> bool:
@@ -119,7 +142,7 @@ def _beyond(bound: list[float], worst: list[float]) -> bool:
 
 def _fitting_pairs(found: Survey, order: str) -> _Pairs:
     bound = {"value": [found.grade, found.unknown, found.price], "price": [found.price]}.get(order, [found.figure])
-    return _Pairs(found.classes, found.number, found.lens, bound)
+    return _Pairs(found.classes, found.number, found.lens, bound, order in ("value", "price"))
 
 
 def _fitting_key(order: str) -> Callable[[Chosen], Key]:
@@ -160,4 +183,4 @@ def _missing_pairs(problem: Problem, items: Items, order: str) -> _Pairs:
     limit = problem.brief.max_price
     if limit is not None:
         gate |= classes.cheapest[number] + problem.lens["lens_price"][lens] > limit * (1 + span.EDGE)
-    return _Pairs(classes, number, lens, [gate, np.where(gate, least, clear)])
+    return _Pairs(classes, number, lens, [gate, np.where(gate, least, clear)], False)

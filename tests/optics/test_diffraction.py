@@ -5,7 +5,7 @@ import tracemalloc
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 from scipy.integrate import dblquad, quad
 from scipy.special import j1
@@ -64,10 +64,12 @@ def test_otf_over_all_frequencies_and_three_waves(shear, waves):
 
 
 @settings(max_examples=60)
+@example(0.35, 80.0)
+@example(0.7, 90.0)
 @given(st.floats(0.0, 1.0), st.floats(3.0, 200.0))
 def test_otf_far_out_of_focus(shear, waves):
     """Across both changes of method."""
-    assert otf(shear, waves) == pytest.approx(otf_along_chords(shear, waves), abs=1e-6)
+    assert otf(shear, waves) == pytest.approx(otf_along_chords(shear, waves), abs=3e-7)
 
 
 def test_methods_meet_at_their_limits():

@@ -119,6 +119,12 @@ def test_a_parallel_beam_needs_its_width_times_root_two():
     assert (length, width) == pytest.approx((20 * math.sqrt(2), 20.0))
 
 
+def test_a_fold_mirror_stands_at_45_degrees_unless_said():
+    cone = (20.0, 400.0, 100.0)
+    assert media.mirror_footprint(100.0, 60.0, *cone) == media.mirror_footprint(100.0, 60.0, *cone, math.radians(45))
+    assert media.mirror_offset(100.0, *cone) == media.mirror_offset(100.0, *cone, math.radians(45))
+
+
 @pytest.mark.parametrize("to_mirror", [5.0, 390.0])
 def test_a_mirror_that_would_reach_into_lens_or_part_has_no_size(to_mirror):
     assert all(math.isnan(side) for side in media.mirror_footprint(100.0, 60.0, 20.0, 400.0, to_mirror))

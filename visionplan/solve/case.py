@@ -95,7 +95,8 @@ class Case:
 
     def u(self, m):
         """From the focus plane to the entrance pupil, mm; infinite for telecentric lenses."""
-        return self.nu(m) / self.phi
+        with np.errstate(divide="ignore"):
+            return self.nu(m) / self.phi
 
     def nu(self, m):
         """u over the focal length: 1/m + 1/p; of a telecentric lens the limit, 1/m."""

@@ -66,7 +66,7 @@ def rank(
     cameras, lenses = _best(judge, items, _fitting_pairs(found, order), _fitting_key(order), min(top, fitting), True)
     if len(cameras) < top:
         short = top - len(cameras)
-        misses = _best(judge, items, _missing_pairs(problem, items, order), _missing_key(order), short, False)
+        misses = _best(judge, items, _missing_pairs(problem, items), _missing_key, short, False)
         cameras, lenses = np.concatenate((cameras, misses[0])), np.concatenate((lenses, misses[1]))
     rigs = rigs_of(judge, choose(judge, items, cameras, lenses)) if len(cameras) else ()
     wanted = concessions if concessions is not None else not fitting
@@ -158,18 +158,18 @@ def _fitting_key(order: str) -> Callable[[Chosen], Key]:
     return key
 
 
-def _missing_key(order: str) -> Callable[[Chosen], Key]:
-    ordered = _fitting_key(order)
-    return lambda chosen: [chosen.misses_gate, chosen.shortfall, *ordered(chosen)]
+def _missing_key(chosen: Chosen) -> Key:
+    """The same whatever the order: gates, shortfall, then as by value."""
+    return [chosen.misses_gate, chosen.shortfall, chosen.unknown, chosen.price]
 
 
-def _missing_pairs(problem: Problem, items: Items, order: str) -> _Pairs:
+def _missing_pairs(problem: Problem, items: Items) -> _Pairs:
     """Every class with every lens, by the least shortfall that any of its rigs may have.
 
     Cameras that miss a gate of their own and cameras that don't are classes apart.
     """
     missing = items.camera == MISSED
-    classes = classes_for(problem, items, np.arange(len(missing)), order, apart=missing)
+    classes = classes_for(problem, items, np.arange(len(missing)), "value", apart=missing)
     lenses = len(items.lens)
     clear = np.full(len(classes) * lenses, np.inf)
     least = np.full(len(classes) * lenses, np.inf)

@@ -94,7 +94,6 @@ def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, An
     if demand not in judge.demands:
         return {"lo": np.zeros(rigs), "hi": np.full(rigs, np.inf), "code": np.full(rigs, NOT_ASKED)}
     lo, hi, code = judge_demand(demand, case)
-    lacks = _flat(demand.lacks(case), rigs)
     lo, hi, code = _flat(lo, rigs), _flat(hi, rigs), _flat(code, rigs)
     at = m[:, 0]
     with np.errstate(invalid="ignore", divide="ignore", over="ignore"):
@@ -103,7 +102,7 @@ def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, An
     code = np.where((code == MET) & outside, MISSED, code)
     asked = demand.asked(case)
     asked = list(zip(*(_flat(end, rigs) for end in asked))) if isinstance(asked, tuple) else _flat(asked, rigs)
-    return {"lo": lo, "hi": hi, "code": code, "asked": asked, "got": got, "lacks": lacks}
+    return {"lo": lo, "hi": hi, "code": code, "asked": asked, "got": got}
 
 
 def _gate_columns(gate: Gate, judge: Judge, case: Case) -> np.ndarray:
@@ -129,7 +128,6 @@ def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast
     never = whole[0][0] == np.inf or whole[1][0] == 0
     stops = [float(n) for n, ok in zip(block.case.N[row], block.fits[row]) if ok] if fits else []
     m = figure["magnification"]
-    lacking = [d.name for d, c in zip(DEMANDS, demands) if c["code"][number] != NOT_ASKED and c["lacks"][number]]
     return Rig(
         rank=number + 1,
         camera=one.problem.catalogue.cameras["id"][one.cameras],
@@ -142,7 +140,7 @@ def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast
         stops=tuple(stops),
         fits=fits,
         grade=span.GRADES[int(chosen.grade[number])] if fits else None,
-        unknown=tuple(lacking + [v.name for v in verdicts if v.gate and v.verdict == VERDICTS[UNKNOWN]]),
+        unknown=tuple(v.name for v in verdicts if v.verdict == VERDICTS[UNKNOWN]),
         span=None if never else (whole[0][0], whole[1][0]),
         latitude=float(chosen.latitude[number]),
         shortfall=float(chosen.shortfall[number]),

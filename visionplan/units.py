@@ -89,7 +89,7 @@ def _finite(value: float, text: str, expected: str) -> float:
     return value
 
 
-def parse(text: str, unit: str) -> float:
+def parse(text: str, unit: str, bare: float | None = None) -> float:
     """Read a quantity: a number and its unit.
 
     Parameters
@@ -98,6 +98,8 @@ def parse(text: str, unit: str) -> float:
         '50 mm', '4 / s', '20 %'; a bare number only where `unit` is "1", "" or a count (px, bit).
     unit : str
         The core unit: one of `EVERYDAY`.
+    bare : float, optional
+        How many core units a number without a unit counts: a column's unit, say. When left out, see `text`.
 
     Returns
     -------
@@ -121,16 +123,25 @@ def parse(text: str, unit: str) -> float:
         raise UnitError(f"{quoted(text)} does not begin with a plain decimal number", expected)
     if rest:
         return _finite(convert(value, factor(rest, unit)), text, expected)
-    if unit not in _BARE:
+    if bare is None and unit not in _BARE:
         raise UnitError(f"{quoted(text)} has no unit", expected)
-    return value
+    return value if bare is None else _finite(convert(value, bare), text, expected)
 
 
-def convert(values, factor: float):
-    """Multiply by a unit's factor; by division where that is exact and the factor is not: 7 % is 0.07."""
+def convert(value: float, factor: float) -> float:
+    """Multiply by a unit's factor, see `ratio`."""
+    times, over = ratio(factor)
+    return value * times / over
+
+
+def ratio(factor: float) -> tuple[float, float]:
+    """Split a unit's factor into a multiplier and a divisor, one of them 1.
+
+    A division by 100 is exact where a product with 0.01 is not: 7 % is 0.07.
+    """
     inverse = 1 / factor
     whole = round(inverse)
-    return values / whole if whole > 1 and math.isclose(inverse, whole, rel_tol=1e-14) else values * factor
+    return (1.0, float(whole)) if whole > 1 and math.isclose(inverse, whole, rel_tol=1e-14) else (factor, 1.0)
 
 
 @lru_cache(maxsize=1024)

@@ -15,9 +15,9 @@ class Column:
     doc: str
     """What it is, in a sentence: for the guide and for error messages."""
     kind: str = "text"
-    """text, number (a quantity in `unit`), count (a whole number), choice (of `choices`), stops (numbers with spaces)."""
+    """text, number (a quantity in `unit`), count (whole), choice (of `choices`) or stops (numbers parted by spaces)."""
     unit: str = ""
-    """The unit that the core computes in; "" for a plain number."""
+    """The unit that the core computes in; "" for a plain number. A count may leave it out."""
     low: float = 0.0
     """Least value allowed."""
     high: float = float("inf")
@@ -28,6 +28,8 @@ class Column:
     """Whether an empty cell, or a missing column, is an error."""
     choices: tuple[str, ...] = ()
     """The words allowed, for kind choice."""
+    currency: bool = False
+    """Whether the heading's brackets may name a currency."""
 
 
 def _positive(name: str, unit: str, doc: str, **more) -> Column:
@@ -45,7 +47,7 @@ def _any_sign(name: str, unit: str, doc: str, **more) -> Column:
 _ID = Column("id", "The name the item goes by; no two alike in a file.", required=True)
 _MOUNT = Column("mount", "The thread or bayonet: C, CS, F, M42, …", required=True)
 _MAKER = Column("maker", "Who makes it.")
-_PRICE = _not_negative("price", "", "Price, in the catalogue's one currency.")
+_PRICE = _not_negative("price", "", "Price, in the catalogue's one currency.", currency=True)
 _STOCK = Column("stock", "How many are in stock.", "count", open_low=False)
 _MASS = _positive("mass", "g", "Mass.")
 _FLANGE = _positive("flange distance", "mm", "Flange focal distance of the mount.")
@@ -62,7 +64,9 @@ LENS_COLUMNS = (
     _positive("magnification", "", "Magnification of a telecentric lens."),
     _positive("working distance", "mm", "Working distance of a telecentric lens, from its front."),
     _positive("nearest magnification", "", "Magnification at the nearest object distance."),
-    Column("stops", "The f-numbers that can be set, parted by spaces, where they aren't the full-stop series.", "stops"),
+    Column(
+        "stops", "The f-numbers that can be set, parted by spaces, where they aren't the full-stop series.", "stops"
+    ),
     _positive("image circle", "mm", "Diameter of the image circle."),
     _any_sign("distortion", "1", "Greatest distortion over the image circle, with its sign."),
     _positive("detail limit", "lp/mm", "Resolution on the sensor."),
@@ -77,7 +81,9 @@ LENS_COLUMNS = (
     _not_negative("focal tolerance", "1", "Tolerance of the focal length, a fraction of it.", high=1.0),
     _FLANGE,
     _not_negative("working distance tolerance", "mm", "Of a telecentric lens: how far off it still holds its values."),
-    _not_negative("telecentricity", "rad", "Of a telecentric lens: greatest angle of a chief ray to the axis.", high=1.5),
+    _not_negative(
+        "telecentricity", "rad", "Of a telecentric lens: greatest angle of a chief ray to the axis.", high=1.5
+    ),
 )
 
 CAMERA_COLUMNS = (
@@ -85,8 +91,8 @@ CAMERA_COLUMNS = (
     _MOUNT,
     _MAKER,
     Column("kind", "area when empty.", "choice", choices=("area", "line")),
-    Column("pixels wide", "Pixels along the sensor's long side, or along the row.", "count", required=True),
-    Column("pixels high", "Pixels along the other side; 1 for one row.", "count", required=True),
+    Column("pixels wide", "Pixels along the sensor's long side, or along the row.", "count", "px", required=True),
+    Column("pixels high", "Pixels along the other side; 1 for one row.", "count", "px", required=True),
     _positive("pixel pitch", "mm", "Distance from pixel to pixel.", required=True),
     Column("colour", "mono or colour.", "choice", choices=("mono", "colour")),
     Column("shutter", "global or rolling.", "choice", choices=("global", "rolling")),
@@ -94,7 +100,7 @@ CAMERA_COLUMNS = (
     _positive("cable limit", "mm", "Longest cable of the interface."),
     _positive("frame rate", "1/s", "Frames in a second."),
     _positive("line rate", "1/s", "Rows in a second, of a line-scan camera."),
-    Column("bit depth", "Bits of a pixel value.", "count", high=64),
+    Column("bit depth", "Bits of a pixel value.", "count", "bit", high=64),
     _positive("shortest exposure", "s", "Shortest exposure time."),
     _positive("quantum efficiency", "1", "At the wavelength in use, or at its peak.", high=1.0),
     _not_negative("dark noise", "e", "Temporal dark noise."),
@@ -140,7 +146,9 @@ class Table:
     """The line of the file where each row begins."""
     file: str = ""
     notes: tuple[str, ...] = ()
-    """Headings of the file that are no columns of ours."""
+    """Headings of the file that are no columns of ours; `table[heading]` is a list of strings too."""
+    currency: str = ""
+    """Of its prices, "" where the heading names none."""
     index: dict[str, int] = field(default_factory=dict)
     """Row by id."""
 

@@ -71,8 +71,10 @@ class Case:
         self.problem = problem
         self.ask: Ask = problem.ask
         self.brief = problem.brief
-        self.cameras = cameras
-        self.lenses = lenses
+        self.cameras: Any = cameras
+        self.lenses: Any = lenses
+        self.least_contrast: Any = None
+        """The least of the three contrasts, once it is worked out."""
         self.__dict__.update({name: getattr(self.ask, name) for name in _OF_ASK})
         self.lam, self.feature = self.brief.wavelength, self.brief.feature
         self.__dict__.update(given)
@@ -81,10 +83,10 @@ class Case:
         """Gather a symbol for these rigs, once."""
         if symbol.startswith("__"):
             raise AttributeError(symbol)
-        if symbol in self.problem.lens and self.lenses is not None:
+        if self.lenses is not None and symbol in self.problem.lens:
             values = self.problem.lens[symbol][self.lenses]
             values = values if symbol == "N" else _column(values)
-        elif symbol in self.problem.camera and self.cameras is not None:
+        elif self.cameras is not None and symbol in self.problem.camera:
             values = _column(self.problem.camera[symbol][self.cameras])
         elif symbol in _DERIVED:
             values = _DERIVED[symbol](self)

@@ -14,9 +14,9 @@ from visionplan.catalogue.items import Catalogue
 from visionplan.solve import screen, span
 from visionplan.solve.choose import Items
 from visionplan.solve.classes import Classes, classes_of
-from visionplan.solve.demands import DEMANDS, MISSED, Demand, Give
+from visionplan.solve.demands import MISSED, Demand, Give
 from visionplan.solve.figures import contrasts
-from visionplan.solve.gates import GATES, Gate
+from visionplan.solve.gates import ASKED, Gate
 from visionplan.solve.judge import Judge, Rigs
 from visionplan.solve.problem import Problem
 from visionplan.solve.rig import Concession
@@ -56,7 +56,7 @@ def concede_problem(problem: Problem, fitting: int) -> tuple[Concession, ...]:
     if fitting:
         return ()
     offers = []
-    for asked in (*DEMANDS, *GATES):
+    for asked in ASKED:
         conceded = asked.concede if isinstance(asked, Demand) else asked.loosens
         if not conceded or not asked.asks(problem.ask):
             continue

@@ -11,7 +11,7 @@ import numpy as np
 
 from visionplan.solve.ask import Ask
 from visionplan.solve.case import Case
-from visionplan.solve.demands import MET, MISSED, NOT_ASKED, UNKNOWN
+from visionplan.solve.demands import DEMANDS, MET, MISSED, NOT_ASKED, UNKNOWN, Demand
 from visionplan.solve.problem import Problem
 from visionplan.solve.span import EDGE
 
@@ -325,6 +325,9 @@ GATES: tuple[Gate, ...] = (
         lines=("focus.min_contrast",),
     ),
 )
+
+ASKED: tuple[Demand | Gate, ...] = (*DEMANDS, *GATES)
+"""Everything a brief can ask, demands first."""
 
 
 def asked_gates(ask: Ask, drop: frozenset[str] = frozenset()) -> list[Gate]:

@@ -5,8 +5,7 @@ from dataclasses import replace
 from visionplan.brief.model import Brief
 from visionplan.catalogue.items import Catalogue
 from visionplan.solve.choose import Items
-from visionplan.solve.demands import DEMANDS
-from visionplan.solve.gates import GATES
+from visionplan.solve.gates import ASKED
 from visionplan.solve.problem import Problem
 from visionplan.solve.survey import survey
 
@@ -38,7 +37,7 @@ def fitting_without(problem: Problem, drop: frozenset[str] = frozenset()) -> int
 
 def _lines() -> dict[str, dict]:
     lines: dict[str, dict] = {}
-    for asked in (*DEMANDS, *GATES):
+    for asked in ASKED:
         for line in asked.lines:
             lines.setdefault(line, {})[asked.name] = asked.asks
     return lines

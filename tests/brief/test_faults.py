@@ -1,7 +1,5 @@
 """Bad briefs: each is refused, where and why is said, and nothing else is."""
 
-import os
-import sys
 from contextlib import suppress
 
 import pytest
@@ -9,7 +7,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from visionplan.brief.fields import BY_KEY, LINES
-from visionplan.brief.read import LONGEST, parse_brief, read_brief
+from visionplan.brief.read import parse_brief
 from visionplan.faults import InputError
 
 SHORTEST = {
@@ -252,6 +250,8 @@ def test_unknown_lines_with_what_was_meant(column, hint):
         (text_of() + "\n[[light]]\n", 6, "light", "a section [light]"),
         (text_of() + "\n[scene.above]\na = 1", 6, "scene.above", "a length"),
         ('"" = 3\n' + text_of(), 1, "", "one of title"),
+        ('"scene.above" = 3\n' + text_of(), 1, "scene.above", "one of title"),
+        (text_of().replace("[station]", '"a.b" = 3\n[station]'), 4, "scene.a.b", "one of field"),
     ],
 )
 def test_unknown_and_misused_sections(text, line, column, hint):
@@ -279,6 +279,7 @@ def test_unknown_and_misused_sections(text, line, column, hint):
         ("title = 'a'\rcomfort = 3", 1),
         ("title = " + "[" * 5000, 1),
         ("title = " + "{a=" * 5000, 1),
+        ("\n" + "a." * 30000 + "a = 1", 2),
         ("[" + "a." * 5000 + "a]", None),
     ],
 )
@@ -303,62 +304,6 @@ def test_control_characters_from_the_file_are_in_no_message():
     text += f'\n["{escape}"]\n"{escape}" = 3\n[scene."{escape}"]\n'
     for fault in faults_of(text):
         assert str(fault).isprintable()
-
-
-class TestFiles:
-    def fault(self, path):
-        with pytest.raises(InputError) as caught:
-            read_brief(path)
-        (fault,) = caught.value.faults
-        return fault
-
-    def test_missing(self, tmp_path):
-        fault = self.fault(tmp_path / "none.toml")
-        assert fault.file == str(tmp_path / "none.toml")
-        assert "No such file" in fault.found
-
-    def test_a_folder(self, tmp_path):
-        assert "directory" in self.fault(tmp_path).found
-
-    def test_a_name_that_no_file_can_have(self):
-        assert "name" in self.fault("a\0b").found
-        assert "name too long" in self.fault("a" * 5000).found
-
-    @pytest.mark.skipif(not hasattr(os, "geteuid") or os.geteuid() == 0, reason="root may read everything")
-    def test_permission_denied(self, tmp_path):
-        path = tmp_path / "brief.toml"
-        path.write_text(text_of())
-        path.chmod(0)
-        assert "Permission denied" in self.fault(path).found
-
-    def test_permission_denied_as_the_system_reports_it(self, tmp_path, monkeypatch):
-        def refuse(*_):
-            raise PermissionError(13, "Permission denied")
-
-        monkeypatch.setattr("builtins.open", refuse)
-        assert "Permission denied" in self.fault(tmp_path / "brief.toml").found
-
-    def test_far_too_long(self, tmp_path):
-        path = tmp_path / "brief.toml"
-        path.write_bytes(b"#" * (LONGEST + 1))
-        assert "too long" in self.fault(path).found
-
-    @pytest.mark.skipif(not os.path.exists("/dev/zero"), reason="no endless file here")
-    def test_without_end(self):
-        assert "too long" in self.fault("/dev/zero").found
-
-    @pytest.mark.parametrize("data", [text_of().encode("utf-16"), b"title = 'x'\n# caf\xe9\n"])
-    def test_not_utf8(self, tmp_path, data):
-        path = tmp_path / "brief.toml"
-        path.write_bytes(data)
-        fault = self.fault(path)
-        assert "UTF-8" in fault.expected
-        assert fault.line == (1 if data.startswith(b"\xff") else 2)
-
-    def test_standard_input_is_closed(self, monkeypatch):
-        monkeypatch.setattr(sys, "stdin", None)
-        fault = self.fault("-")
-        assert (fault.file, "closed" in fault.found) == ("standard input", True)
 
 
 @given(st.text(max_size=200))

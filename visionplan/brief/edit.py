@@ -70,7 +70,7 @@ def _table(document: MutableMapping, key: str) -> MutableMapping:
 
 def _put(holder: Any, place: str | int, raw: Any) -> None:
     """Set one element, deep within what is there already, so that comments within lists and tables stay."""
-    from tomlkit.items import InlineTable
+    from tomlkit.items import AoT, InlineTable
 
     there = holder[place] if isinstance(place, int) or place in holder else None
     if isinstance(raw, dict) and isinstance(there, MutableMapping) and not isinstance(there, InlineTable):
@@ -84,7 +84,7 @@ def _put(holder: Any, place: str | int, raw: Any) -> None:
             if number < len(there):
                 _put(there, number, element)
             else:
-                there.append(item(element))
+                there.append(element if isinstance(there, AoT) else item(element))
     elif there != raw:
         holder[place] = item(raw)
 

@@ -88,7 +88,7 @@ def item(raw: Any) -> Any:
 def _typed(line: Line, text: str) -> Any:
     """What was typed as the file would hold it; what makes no sense for the line as it is, for `take` to refuse."""
     text = text.strip()
-    if text.startswith(('"', "'", "[", "{")):
+    if text.startswith(('"', "'") if line.kind == "text" else ('"', "'", "[", "{")):
         try:
             return _loaded(text)
         except (ValueError, RecursionError):
@@ -118,7 +118,7 @@ def _pair(text: str, between: re.Pattern) -> list[str] | str:
         return text
     # In 120 x 90 mm the unit belongs to both.
     unit = parts[1].lstrip("+-.0123456789 ")
-    return [f"{parts[0]} {unit}" if isinstance(_number(parts[0]), int | float) else parts[0], parts[1]]
+    return [f"{parts[0]} {unit}".rstrip() if isinstance(_number(parts[0]), int | float) else parts[0], parts[1]]
 
 
 def _yes(text: str) -> bool:

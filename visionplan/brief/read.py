@@ -1,21 +1,18 @@
 """Read a brief: the whole of it, or everything that is wrong with it."""
 
-import sys
 from functools import cached_property
-from os import PathLike, fspath
+from os import PathLike
 from types import SimpleNamespace
 from typing import Any
 
 from visionplan.brief import toml
 from visionplan.brief.fields import BY_KEY, LINES, SECTIONS, TASKS
+from visionplan.brief.files import name_of, read_text
 from visionplan.brief.layers import settle
 from visionplan.brief.model import Brief, Fold
 from visionplan.brief.rules import check
 from visionplan.brief.values import Wrong, describe, did_you_mean, nearest, shown, take
 from visionplan.faults import Fault, InputError
-
-LONGEST = 256 * 1024
-"""Bytes: more is no brief."""
 
 MOST_SUGGESTIONS = 20
 """Looking for the word that was meant takes a while, and a file with more unknown words is no brief."""
@@ -29,41 +26,7 @@ def read_brief(path: str | PathLike[str]) -> Brief:
     InputError
         With everything that is wrong with it.
     """
-    name = "standard input" if path == "-" else fspath(path)
-    return parse_brief(read_text(path), name)
-
-
-def read_text(path: str | PathLike[str]) -> str:
-    """Read a brief's text as it stands, without a byte order mark.
-
-    Raises
-    ------
-    InputError
-        Where it can't be read, is far too long or isn't UTF-8.
-    """
-    name = "standard input" if path == "-" else fspath(path)
-    try:
-        data = _bytes(path)
-    except OSError as error:
-        raise InputError([Fault(name, f"can't be read: {error.strerror}", "a brief (TOML)")]) from None
-    except ValueError:
-        raise InputError([Fault(name, "no file can have this name", "the name of a brief (TOML)")]) from None
-    if len(data) > LONGEST:
-        raise InputError([Fault(name, "the file is far too long for a brief", f"at most {LONGEST // 1024} KiB")])
-    try:
-        return data.decode("utf-8-sig")
-    except UnicodeDecodeError as error:
-        line = data.count(b"\n", 0, error.start) + 1
-        raise InputError([Fault(name, "the file isn't UTF-8 text", "a brief saved as UTF-8", line)]) from None
-
-
-def _bytes(path: str | PathLike[str]) -> bytes:
-    if path != "-":
-        with open(path, "rb") as file:
-            return file.read(LONGEST + 1)
-    if sys.stdin is None:
-        raise OSError(0, "it is closed")
-    return sys.stdin.buffer.read(LONGEST + 1)
+    return parse_brief(read_text(path), name_of(path))
 
 
 def parse_brief(text: str, name: str) -> Brief:
@@ -120,7 +83,7 @@ class _Reading:
             raise InputError(self.faults)
         raws: dict[str, Any] = {}
         for name, raw in data.items():
-            if name in BY_KEY:
+            if name in BY_KEY and not BY_KEY[name].section:
                 raws[name] = raw
                 continue
             section = self.section(name, raw)
@@ -129,7 +92,7 @@ class _Reading:
                 if key in BY_KEY:
                     raws[key] = value
                 else:
-                    self.unknown(key, name)
+                    self.unknown(section, inner, name)
         return raws
 
     def section(self, name: str, raw: Any) -> str:
@@ -142,21 +105,21 @@ class _Reading:
             self.bad |= {line.key for line in LINES if line.section == name}
             return ""
         if not isinstance(raw, dict):
-            self.unknown(name, "")
+            self.unknown("", name, "")
             return ""
-        meant = nearest(name, known)
+        meant = self.meant(name, known)
         names = ", ".join(f"[{section}]" for section in known)
         self.fault(name, f"[{shown(name)}] is no section of a brief", f"one of {names}{did_you_mean(meant)}")
-        own = {key: line for key, line in self.lines.items() if key == name or key.startswith(f"{name}.")}
-        self.lines.update({meant + key[len(name) :]: line for key, line in own.items()})
+        if meant:
+            own = {key: line for key, line in self.lines.items() if key == name or key.startswith(f"{name}.")}
+            self.lines.update({meant + key[len(name) :]: line for key, line in own.items()})
         return meant
 
-    def unknown(self, key: str, written: str) -> None:
-        """Complain of a line that the brief doesn't have, in the section as written."""
-        section, _, name = key.rpartition(".")
+    def unknown(self, section: str, name: str, written: str) -> None:
+        """Complain of a line that the brief doesn't have, in a section as written."""
         own = [line.name for line in LINES if line.section == section]
         others = [line.section for line in LINES if line.name == name]
-        meant = nearest(name, own) if not others and len(self.faults) < MOST_SUGGESTIONS else ""
+        meant = "" if others else self.meant(name, own)
         if others:
             expected = " or ".join(f"it in [{other}]" if other else "it before the first section" for other in others)
         else:
@@ -164,6 +127,10 @@ class _Reading:
         self.bad |= {line.key for line in LINES if line.name in (name, meant)}
         place = f"in [{shown(written)}]" if written else "before the first section"
         self.fault(f"{written}.{name}".lstrip("."), f"{shown(name)} is not known {place}", expected)
+
+    def meant(self, word: str, words: list[str]) -> str:
+        """The word that was perhaps meant; "" for none, or where there are too many faults to look."""
+        return nearest(word, words) if len(self.faults) < MOST_SUGGESTIONS else ""
 
     def values(self, raws: dict[str, Any]) -> dict[str, Any]:
         """The values in core units by attribute, of the lines that could be read."""

@@ -12,6 +12,7 @@ _HEAD = re.compile(
     )""",
     re.VERBOSE,
 )
+_MOST_DOTS = 20
 _PLACE = re.compile(r"\s*\(at (?:line (\d+), column \d+|end of document)\)$")
 
 
@@ -55,12 +56,12 @@ def statements(text: str) -> list[Statement]:
 
 
 def lines(text: str) -> dict[str, int]:
-    """Tell the line of each key and section, and of the sections and tables that a dotted key implies."""
+    """Tell the line of each key and section, and of the section and line that a longer dotted key implies."""
     found: dict[str, int] = {}
     for statement in statements(text):
-        parts = statement.key.split(".")
-        for depth in range(len(parts), 0, -1):
-            found.setdefault(".".join(parts[:depth]), statement.line)
+        section, line, *_ = [*statement.key.split(".", 2), ""]
+        for key in (section, f"{section}.{line}", statement.key):
+            found.setdefault(key, statement.line)
     return found
 
 
@@ -70,6 +71,8 @@ def load(text: str) -> tuple[dict | None, list[SyntaxFault]]:
     The data is None where a faulty heading leaves open what belongs where.
     """
     text = text.replace("\r\n", "\n")
+    if deep := _deep(text):
+        return None, [deep]
     data, fault = _parse(text)
     if fault is None:
         return data, []
@@ -88,6 +91,15 @@ def load(text: str) -> tuple[dict | None, list[SyntaxFault]]:
         return None, faults
     data, fault = _parse("\n".join(rows))
     return data, faults + ([fault] if fault else [])
+
+
+def _deep(text: str) -> SyntaxFault | None:
+    """Find a dotted key that tomllib would take gigabytes to parse."""
+    for number, row in enumerate(text.split("\n"), 1):
+        key, equals, _ = row.partition("=")
+        if equals and "#" not in key and key.count(".") > _MOST_DOTS:
+            return SyntaxFault(number, "", "a key of far too many parts")
+    return None
 
 
 def _wrong(statement: Statement, seen: dict[tuple[int, str], int]) -> SyntaxFault | None:

@@ -1,13 +1,55 @@
-"""Write a text to its file so that nothing is ever lost."""
+"""A brief's text from its file, and to it so that nothing is ever lost."""
 
 import errno
 import os
 import secrets
 import stat
+import sys
 from contextlib import suppress
 from os import PathLike
 
 from visionplan.faults import Fault, InputError
+
+LONGEST = 64 * 1024
+"""Bytes: more is no brief."""
+
+
+def name_of(path: str | PathLike[str]) -> str:
+    """The file's name in messages."""
+    return "standard input" if path == "-" else os.fspath(path)
+
+
+def read_text(path: str | PathLike[str]) -> str:
+    """Read a brief's text as it stands, without a byte order mark.
+
+    Raises
+    ------
+    InputError
+        Where it can't be read, is far too long or isn't UTF-8.
+    """
+    name = name_of(path)
+    try:
+        data = _bytes(path)
+    except OSError as error:
+        raise InputError([Fault(name, f"can't be read: {error.strerror}", "a brief (TOML)")]) from None
+    except ValueError:
+        raise InputError([Fault(name, "no file can have this name", "the name of a brief (TOML)")]) from None
+    if len(data) > LONGEST:
+        raise InputError([Fault(name, "the file is far too long for a brief", f"at most {LONGEST // 1024} KiB")])
+    try:
+        return data.decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        line = data.count(b"\n", 0, error.start) + 1
+        raise InputError([Fault(name, "the file isn't UTF-8 text", "a brief saved as UTF-8", line)]) from None
+
+
+def _bytes(path: str | PathLike[str]) -> bytes:
+    if path != "-":
+        with open(path, "rb") as file:
+            return file.read(LONGEST + 1)
+    if sys.stdin is None:
+        raise OSError(0, "it is closed")
+    return sys.stdin.buffer.read(LONGEST + 1)
 
 
 def write_atomically(path: str | PathLike[str], text: str) -> None:

@@ -47,7 +47,7 @@ def reach(case: Case):
 
 def headroom(case: Case):
     """The camera's back and its cable stay under what hangs above."""
-    room = case.brief.headroom - case.ask.cable_room
+    room = (case.brief.headroom or np.inf) - case.ask.cable_room
     # entocentric: the sum is f m + f/m + fixed, least where m = 1
     fixed = case.f - case.a + case.D + case.z + case.lens_length - case.d + case.camera_length
     L = room - fixed

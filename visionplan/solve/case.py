@@ -176,12 +176,10 @@ def _inverse_pupil_ratio(case: Case):
 def case_of(problem: Problem, arrangement: Arrangement, cameras=None, lenses=None, **given) -> Case:
     """The case of rigs that all stand in one arrangement."""
     W, H = problem.ask.covered(arrangement)
-    fixed = {"W": W, "H": H, "g": problem.ask.slack(arrangement), "portrait": arrangement.portrait}
-    case = Case(problem, cameras, lenses, **fixed, nx=arrangement.nx, ny=arrangement.ny, **given)
+    fixed: dict[str, Any] = {"W": W, "H": H, "g": problem.ask.slack(arrangement), "portrait": arrangement.portrait}
     if cameras is not None:
-        w, h = problem.sides(arrangement)
-        case.w, case.h = _column(w[cameras]), _column(h[cameras])
-    return case
+        fixed["w"], fixed["h"] = (_column(side[cameras]) for side in problem.sides(arrangement))
+    return Case(problem, cameras, lenses, **fixed, nx=arrangement.nx, ny=arrangement.ny, **given)
 
 
 _DERIVED = {

@@ -115,6 +115,7 @@ def test_two_columns_that_mean_the_same(works, again, skip_bad):
         ("mm**9999999**99", "not known"),
         ("m" + "*m" * 100_000, "not known"),
         ("\x1b[31m", "not known"),
+        (" " * 1_000_000 + "[", "not known"),
     ],
 )
 @pytest.mark.parametrize("skip_bad", [False, True])
@@ -123,7 +124,8 @@ def test_units_of_headings(works, unit, says, skip_bad):
     assert fault.line == 1
     assert says in fault.found
     assert fault.expected.startswith("the unit of a length such as")
-    assert fault.found.isprintable()
+    assert str(fault).isprintable()
+    assert len(str(fault)) < 400
 
 
 @pytest.mark.parametrize(
@@ -134,6 +136,15 @@ def test_units_where_none_has_a_place(works, heading):
     (fault,) = works.faults(lenses=f"{top},{heading}\n{first},\n{second},\n")
     assert fault.column == heading
     assert "has no place here" in fault.found
+
+
+def test_very_many_columns(works):
+    names = ",".join(f"n{k}" for k in range(50_000))
+    catalogue = works.read(cameras=works.cameras.replace("\n", f",{names}\n"))
+    assert len(catalogue.cameras.notes) == 50_000
+    assert len(catalogue.warnings[0]) < 2000
+    faults = works.faults(cameras=f"id,{names}\n")
+    assert "mount" in {fault.column for fault in faults}
 
 
 def test_prices_in_two_currencies(works):

@@ -39,7 +39,8 @@ def read_catalogue(folder: Path | str, skip_bad: bool = False) -> Catalogue:
     for item, ledger in ledgers.items():
         data = _read_bytes(Path(ledger.file), ledger, item in _OPTIONAL)
         if data is not None:
-            digest.update(f"{item}.csv {len(data)}\n".encode() + data)
+            digest.update(f"{item}.csv {len(data)}\n".encode())
+            digest.update(data)
         if not ledger.fatal:
             table = read_table(_NO_SPACERS if data is None else data, item, ledger)
             if table is not None:

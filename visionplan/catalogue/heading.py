@@ -4,13 +4,14 @@ import difflib
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass, field
+from itertools import islice
 
 from visionplan.catalogue.items import COLUMNS, Column
 from visionplan.catalogue.ledger import Ledger
-from visionplan.text import quoted
-from visionplan.units import EXPECTED, UnitError, factor
+from visionplan.text import clean, quoted, shorten
+from visionplan.units import UnitError, factor
 
-_HEADING = re.compile(r"(.*?)\s*\[(.*)\]", re.DOTALL)
+_MOST_COMPARED = 200
 _CURRENCY = re.compile(r"[A-Z]{3}|[$€£¥]")
 
 
@@ -22,7 +23,7 @@ class Field:
     at: int
     """Where it stands in a row."""
     heading: str
-    """As written."""
+    """As written, safe to show."""
     factor: float | None
     """How many core units a bare number counts; None where the heading names no unit though one is needed."""
 
@@ -52,17 +53,20 @@ def read_heading(cells: list[str], line: int, item: str, ledger: Ledger) -> Head
     """Tell the columns from the first row; None where none of them is ours."""
     columns = {column.name: column for column in COLUMNS[item]}
     heading = Heading(line, len(cells))
-    ledger.order = {cell.strip(): at for at, cell in enumerate(cells)}
+    taken: set[str] = set()
     for at, cell in enumerate(map(str.strip, cells)):
         name, unit = split_heading(cell)
+        shown = shorten(clean(cell[:80]), 60)
         if name not in columns:
-            heading.notes.append((at, _unlike(cell, at, heading.notes)))
+            note = cell if cell and cell not in taken else f"{cell} {unnamed(at)}".strip()
+            taken.add(note)
+            heading.notes.append((at, note))
         elif name in heading.written:
             found = f"{quoted(cell)} means the same as {quoted(heading.written[name])}"
-            ledger.of_file(found, "each column once", line, cell)
+            ledger.of_file(found, "each column once", line, shown)
         else:
-            heading.written[name] = cell
-            _add_field(heading, columns[name], at, cell, unit, ledger)
+            heading.written[name], ledger.order[shown] = shown, at
+            _add_field(heading, columns[name], at, shown, unit, ledger)
     if not heading.written:
         parted = " (the cells seem to be parted by other than commas)" if len(cells) == 1 else ""
         headings = ", ".join(example(column) for column in COLUMNS[item] if column.required)
@@ -76,22 +80,22 @@ def read_heading(cells: list[str], line: int, item: str, ledger: Ledger) -> Head
 
 def missing(column: Column, heading: Heading, ledger: Ledger) -> None:
     """Note that a column is not there."""
-    alike = nearest(column.name, [note for _, note in heading.notes])
+    alike = nearest(column.name, (note for _, note in heading.notes))
     hint = f" ({quoted(alike)} is no heading of ours)" if alike else ""
     ledger.of_file(f"the column is missing{hint}", f"a heading '{example(column)}'", heading.line, column.name)
 
 
 def nearest(name: str, others: Iterable[str]) -> str | None:
     """Find what is probably meant by a name that is slightly wrong."""
-    alike = {split_heading(other[:80])[0]: other for other in others}
+    alike = {split_heading(other[:80])[0]: other for other in islice(others, _MOST_COMPARED)}
     found = difflib.get_close_matches(split_heading(name[:80])[0], list(alike), 1, 0.8)
     return alike[found[0]] if found else None
 
 
 def split_heading(text: str) -> tuple[str, str]:
     """Split 'Focal  length [mm]' into its name in small letters and its unit, "" where there is none."""
-    match = _HEADING.fullmatch(text)
-    name, unit = match.groups() if match else (text, "")
+    name, opened, unit = text.removesuffix("]").partition("[") if text.endswith("]") else (text, "", "")
+    name = name if opened else text
     return " ".join(name.casefold().split()), unit.strip()
 
 
@@ -100,22 +104,12 @@ def unnamed(at: int) -> str:
     return f"(column {at + 1})"
 
 
-def _unlike(cell: str, at: int, notes: list[tuple[int, str]]) -> str:
-    taken = {note for _, note in notes}
-    return cell if cell and cell not in taken else f"{cell} {unnamed(at)}".strip()
-
-
-def _add_field(heading: Heading, column: Column, at: int, cell: str, unit: str, ledger: Ledger) -> None:
+def _add_field(heading: Heading, column: Column, at: int, shown: str, unit: str, ledger: Ledger) -> None:
     if column.currency and _CURRENCY.fullmatch(unit):
         heading.currency, unit = unit, ""
-    number = column.kind in ("number", "count")
+    bare = 1.0 if column.kind != "number" or column.unit in ("", "1") else None
     try:
-        if unit and not number:
-            raise UnitError(f"the unit {quoted(unit)} has no place here", f"the heading '{column.name}'")
-        bare = 1.0 if column.kind != "number" or column.unit in ("", "1") else None
-        heading.fields.append(Field(column, at, cell, factor(unit, column.unit) if unit else bare))
+        heading.fields.append(Field(column, at, shown, factor(unit, column.unit) if unit else bare))
     except UnitError as error:
-        expected = (
-            f"the unit of {error.expected}" if number and column.unit in EXPECTED and column.unit else error.expected
-        )
-        ledger.of_file(error.found, expected, heading.line, cell)
+        expected = f"the unit of {error.expected}" if column.unit else f"a heading '{column.name}' without one"
+        ledger.of_file(error.found, expected, heading.line, shown)

@@ -133,20 +133,17 @@ class Case:
         cameras, lenses, N = self.cameras[rows], self.lenses[rows], self.N[rows, stops][:, None]
         return case_of(self.problem, arrangement, cameras, lenses, N=N, rings=rings)
 
-    def row(self, index: int, stop: int | None = None) -> "Case":
-        """The case of one rig, of scalars; with a stop's number also its f-number is one."""
-        one = Case(self.problem, None, None)
+    def rows(self) -> list["Case"]:
+        """Cases of one rig each, of scalars; only where every symbol is (rigs, 1) or the same for all."""
+        count = len(self.cameras)
         symbols = {*SYMBOLS, *_DERIVED, *self.problem.lens, *self.problem.camera, *self.__dict__}
-        for symbol in symbols - set(one.__dict__):
+        own = [Case(self.problem, int(camera), int(lens)) for camera, lens in zip(self.cameras, self.lenses)]
+        for symbol in symbols - {"problem", "ask", "brief", "cameras", "lenses"}:
             values = np.asarray(getattr(self, symbol))
-            if values.ndim == 2:
-                values = values[index if len(values) > 1 else 0]
-                values = values[stop if stop is not None and len(values) > 1 else 0]
-            elif values.ndim == 1:
-                values = values[index]
-            one.__dict__[symbol] = values[()] if values.dtype == object else values.item()
-        one.cameras, one.lenses = int(self.cameras[index]), int(self.lenses[index])
-        return one
+            column = np.broadcast_to(values.reshape(-1) if values.ndim else values, count).tolist()
+            for one, value in zip(own, column):
+                one.__dict__[symbol] = value
+        return own
 
 
 def _column(values: np.ndarray) -> np.ndarray:

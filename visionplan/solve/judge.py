@@ -5,6 +5,7 @@ spacer stacks that can matter, and leaves each rig's spans, gates and unknowns a
 alone is worked out once for each lens and stop and gathered from there.
 """
 
+from collections.abc import Callable
 from dataclasses import dataclass, replace
 from functools import cached_property
 
@@ -74,13 +75,16 @@ class Rigs:
 
     arrangement: Arrangement
     case: Case
-    bounds: Bounds
+    intersect: Callable[[], Bounds]
+    """Works out `bounds`: where it is enough to know that a rig fits, nobody asks."""
+    ends: Bounds | None
+    """Where every rig is known to fit its span: bounds over all its stops, so wider than those of any."""
     stack: np.ndarray
     """Row of the spacer stack within the stacks of the lens's thread."""
     gates: np.ndarray
     """Worst code of the gates of a pair, but for the contrast."""
-    gates_unknown: np.ndarray
-    """Whether any gate of a pair is unknown, missed or not."""
+    unknown: np.ndarray
+    """Whether a demand or a gate of the pair is unknown, of each rig."""
     source: np.ndarray
     """Which of the pairs asked for each rig belongs to."""
     judges_contrast: bool
@@ -96,9 +100,22 @@ class Rigs:
         return self.case.lenses
 
     @cached_property
-    def unknown(self) -> np.ndarray:
-        """Whether a demand or a gate of the pair is unknown, of each rig."""
-        return _flat(self.bounds.unknown, len(self.cameras)) | self.gates_unknown
+    def bounds(self) -> Bounds:
+        """Intersections of the demands: shape (rigs, stops)."""
+        return self.intersect()
+
+    @cached_property
+    def fit(self) -> np.ndarray:
+        """Whether a rig fits at some stop, gates of the pair included."""
+        return self.fits.any(axis=1) if self.ends is None else self.gates < MISSED
+
+    @cached_property
+    def best_grade(self) -> np.ndarray:
+        """Grade of each rig at its best stop, or a better one where that isn't worked out."""
+        if self.ends is None:
+            return self.grade.min(axis=1)
+        with np.errstate(divide="ignore"):
+            return np.asarray(span.grade(self.ends.hi_p / self.ends.lo_p - 1, self.case.brief.comfort))[:, 0]
 
     @cached_property
     def fits_span(self) -> np.ndarray:
@@ -145,6 +162,35 @@ class Rigs:
         return np.where(self.fits, span.grade(self.room, self.case.brief.comfort), len(span.GRADES))
 
 
+@dataclass(frozen=True)
+class OfLens:
+    """What belongs to lens and stop alone, for every lens of the catalogue."""
+
+    bounds: Bounds
+    """Shape (lenses, stops)."""
+    lo: np.ndarray
+    """Of all demands, a telecentric lens's magnification included; (inf, 0) where nothing is left."""
+    hi: np.ndarray
+    least: np.ndarray
+    """Least `lo` over the stops, shape (lenses,)."""
+    most: np.ndarray
+    widest: Bounds
+    """Bounds over all stops that leave something, shape (lenses, 1)."""
+
+    @classmethod
+    def of(cls, bounds: Bounds, case: Case) -> "OfLens":
+        """What follows from the bounds of a case of every lens."""
+        lo, hi = np.fmax(bounds.lo, case.M), np.fmin(bounds.hi, case.M)
+        possible = span.holds(lo, hi) & np.isfinite(case.N)
+        lo, hi = np.where(possible, lo, np.inf), np.where(possible, hi, 0.0)
+        widest = replace(
+            bounds,
+            lo_p=np.where(possible, bounds.lo_p, np.inf).min(axis=1, keepdims=True),
+            hi_p=np.where(possible, bounds.hi_p, 0.0).max(axis=1, keepdims=True),
+        )
+        return cls(bounds, lo, hi, lo.min(axis=1), hi.max(axis=1), widest)
+
+
 class Judge:
     """Judges the rigs of a problem, all demands and gates but for those dropped."""
 
@@ -153,21 +199,10 @@ class Judge:
         self.drop = drop
         self.demands = asked_demands(problem.ask, drop)
         self.gates = asked_gates(problem.ask, drop)
-        self._lenses: dict[float, tuple] = {}
+        self._lenses: dict[float, OfLens] = {}
 
-    def lens_bounds(self, arrangement: Arrangement) -> Bounds:
-        """What belongs to lens and stop alone, for every lens: shape (lenses, stops)."""
-        return self._of_lens(arrangement)[0]
-
-    def lens_span(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:
-        """The same as (lo, hi), a telecentric lens's magnification included; (inf, 0) where nothing is left."""
-        return self._of_lens(arrangement)[1]
-
-    def lens_ends(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:
-        """Least lo and greatest hi of each lens over its stops: shape (lenses, 1)."""
-        return self._of_lens(arrangement)[2]
-
-    def _of_lens(self, arrangement: Arrangement):
+    def of_lens(self, arrangement: Arrangement) -> "OfLens":
+        """What belongs to lens and stop alone, for every lens."""
         slack = self.problem.ask.slack(arrangement)
         if slack not in self._lenses:
             every = np.arange(len(self.problem.catalogue.lenses))
@@ -176,11 +211,7 @@ class Judge:
             for demand in self.demands:
                 if demand.of == "lens":
                     bounds = bounds.add(demand, case)
-            lo, hi = np.fmax(bounds.lo, case.M), np.fmin(bounds.hi, case.M)
-            possible = span.holds(lo, hi) & np.isfinite(case.N)
-            lo, hi = np.where(possible, lo, np.inf), np.where(possible, hi, 0.0)
-            ends = lo.min(axis=1, keepdims=True), hi.max(axis=1, keepdims=True)
-            self._lenses[slack] = bounds, (lo, hi), ends
+            self._lenses[slack] = OfLens.of(bounds, case)
         return self._lenses[slack]
 
     def rigs(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray, all_stacks=False) -> Rigs:
@@ -198,11 +229,18 @@ class Judge:
         if not all_stacks:
             source = self._possible(arrangement, lenses, of_pair)
             case, of_pair = self._bare(arrangement, cameras[source], lenses[source]), of_pair.take(source)
-        bounds = self.lens_bounds(arrangement).take(case.lenses).both(of_pair)
+        of_lens, none = self.of_lens(arrangement), np.zeros(len(source), int)
+        whole = not self.problem.has_rings and _CONTRAST not in self.gates and all(d.of != "rig" for d in self.demands)
+        if whole:  # nothing more can come: what is possible fits
+            unknown = _rows(of_lens.bounds.unknown, case.lenses) | of_pair.unknown
+            ends = None if all_stacks else of_lens.widest.take(case.lenses).both(of_pair)
+            intersect = lambda: of_lens.bounds.take(case.lenses).both(of_pair)  # noqa: E731
+            return self._rigs(arrangement, case, intersect, ends, unknown, none, source)
+        bounds = of_lens.bounds.take(case.lenses).both(of_pair)
         for demand in self.demands:
             if demand.of == "rig":
                 bounds = bounds.add(demand, case)
-        stack = np.zeros(len(source), int)
+        stack = none
         if self.problem.has_rings:
             case, bounds, stack, row = self._with_stacks(arrangement, case, bounds, all_stacks)
             source = source[row]
@@ -210,12 +248,15 @@ class Judge:
                 bounds = bounds.add(_TRAVEL, case)
             if _HEADROOM in self.demands and case.telecentric.any():  # its rings count, and they only make it longer
                 bounds = bounds.add(_HEADROOM, case)
-        gates, unknown = np.full(len(case.cameras), MET), np.zeros(len(case.cameras), bool)
+        return self._rigs(arrangement, case, lambda: bounds, None, bounds.unknown, stack, source)
+
+    def _rigs(self, arrangement, case: Case, intersect, ends: Bounds | None, unknown, stack, source) -> Rigs:
+        gates, unknown = np.full(len(source), MET), _flat(unknown, len(source))
         for gate in self.gates:
             if gate.of == "pair":
                 codes = _flat(judge_gate(gate, case), len(gates))
                 gates, unknown = np.maximum(gates, codes), unknown | (codes == UNKNOWN)
-        return Rigs(arrangement, case, bounds, stack, gates, unknown, source, _CONTRAST in self.gates)
+        return Rigs(arrangement, case, intersect, ends, stack, gates, unknown, source, _CONTRAST in self.gates)
 
     def _bare(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray) -> Case:
         none = np.zeros((len(cameras), 1))
@@ -224,14 +265,14 @@ class Judge:
     def _possible(self, arrangement: Arrangement, lenses: np.ndarray, of_pair: Bounds) -> np.ndarray:
         """Rows whose pair demands leave something to some stop of the lens."""
         lo, hi = (np.broadcast_to(end, (len(lenses), 1))[:, 0] for end in (of_pair.lo, of_pair.hi))
-        least, most = (end[lenses, 0] for end in self.lens_ends(arrangement))
+        of_lens = self.of_lens(arrangement)
+        least, most = of_lens.least[lenses], of_lens.most[lenses]
         left = np.flatnonzero(span.holds(np.maximum(lo, least), np.minimum(hi, most)))
         possible = np.zeros(len(lenses), bool)
-        of_lens_lo, of_lens_hi = self.lens_span(arrangement)
-        stops = of_lens_lo.shape[1]
+        stops = of_lens.lo.shape[1]
         for stop in sorted(range(stops), key=lambda stop: abs(stop - stops // 2)):  # the middle ones fit most often
-            low = np.maximum(lo[left], of_lens_lo[lenses[left], stop])
-            high = np.minimum(hi[left], of_lens_hi[lenses[left], stop])
+            low = np.maximum(lo[left], of_lens.lo[lenses[left], stop])
+            high = np.minimum(hi[left], of_lens.hi[lenses[left], stop])
             holds = span.holds(low, high)
             possible[left[holds]] = True
             left = left[~holds]

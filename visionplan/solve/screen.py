@@ -51,7 +51,7 @@ def candidates(judge: Judge, arrangement: Arrangement, cameras: np.ndarray, lens
 def _lens_ends(judge: Judge, arrangement: Arrangement):
     """Of each lens, over its stops: Hi/(1 + B/u(Hi)), the greatest m_s, and Lo/(1 − A/u(Lo)), the least r."""
     problem = judge.problem
-    lo, hi = (end[:, 0] for end in judge.lens_ends(arrangement))
+    lo, hi = judge.of_lens(arrangement).least, judge.of_lens(arrangement).most
     f, p = problem.lens["f"], problem.lens["p"]
     with np.errstate(divide="ignore", invalid="ignore"):
         most = np.where(hi > 0, hi / (1 + problem.ask.B / (f * (1 / hi + 1 / p))), -np.inf)

@@ -104,10 +104,12 @@ def _batches(judge: Judge, pairs: _Pairs, top: int) -> Iterator[tuple[np.ndarray
     price = judge.problem.camera["camera_price"]
     # cameras of a class differ in nothing that the choice sees but the price, where a price is asked
     most = None if judge.problem.brief.max_price is not None else top
-    queue = np.lexsort(pairs.bound[::-1])
+    queue = _front(pairs.bound, _CLASSES + 1)
     at, spread, batch = 0, _CLASSES, min(max(_BATCH, top), _MOST)
     waiting = np.zeros(0, int), np.zeros(0, int), [np.zeros(0) for _ in pairs.bound]
     while at < len(queue) or len(waiting[0]):
+        if at + spread >= len(queue) < len(pairs.number):
+            queue = _front(pairs.bound, 8 * (at + spread))
         some, at, spread = queue[at : at + spread], min(at + spread, len(queue)), 2 * spread
         position, cameras = pairs.classes.spread(pairs.number[some], most)
         bound = [column[some][position].astype(float) for column in pairs.bound]
@@ -129,6 +131,22 @@ def _batches(judge: Judge, pairs: _Pairs, top: int) -> Iterator[tuple[np.ndarray
             end = min(begin + batch, ready)
             yield cameras[begin:end], lenses[begin:end], [column[begin:end] for column in bound]
         waiting = cameras[ready:], lenses[ready:], [column[ready:] for column in bound]
+
+
+def _front(columns: Key, most: int) -> np.ndarray:
+    """Rows of the first `most` in the order of some columns, in that order; NaN last."""
+    rows = np.arange(len(columns[0]))
+    kept = [rows[:0]]
+    for column in columns:
+        if len(rows) <= most:
+            break
+        values = np.nan_to_num(column[rows].astype(float), nan=np.inf)
+        last = np.partition(values, most - 1)[most - 1]
+        kept.append(rows[values < last])
+        most -= len(kept[-1])
+        rows = rows[values == last]
+    front = np.sort(np.concatenate((*kept, rows[:most])))
+    return front[np.lexsort([column[front] for column in columns[::-1]])]
 
 
 def _beyond(bound: list[float], worst: list[float]) -> bool:

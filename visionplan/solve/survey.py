@@ -71,7 +71,7 @@ def survey(problem: Problem, items: Items, order: str = "value", drop: frozenset
 
 def _part(classes: Classes, rigs: Rigs, order: Order | None, limit: float | None) -> tuple[np.ndarray, ...]:
     """Of the rigs of a block that fit: class, lens, grade, unknown, price, figure, affordable."""
-    rows = np.flatnonzero(rigs.fits.any(axis=1))
+    rows = np.flatnonzero(rigs.fit)
     case, count = rigs.case, rigs.arrangement.cameras
     number, lens = classes.number[rigs.cameras[rows]], rigs.lenses[rows]
     rest = np.broadcast_to(case.lens_price + case.ring_price, (len(rigs.lenses), 1))[rows, 0]
@@ -86,7 +86,7 @@ def _part(classes: Classes, rigs: Rigs, order: Order | None, limit: float | None
     return (
         number,
         lens,
-        rigs.grade[rows].min(axis=1),
+        rigs.best_grade[rows],
         rigs.unknown[rows],
         count * (classes.cheapest[number] + rest),
         figure,

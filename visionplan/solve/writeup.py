@@ -1,6 +1,7 @@
 """Writing up chosen rigs: every figure and verdict of each, as plain data."""
 
 from collections.abc import Sequence
+from math import isfinite
 from typing import Any
 
 import numpy as np
@@ -21,7 +22,7 @@ from visionplan.solve.demands import (
     Demand,
 )
 from visionplan.solve.demands import judge as judge_demand
-from visionplan.solve.gates import GATES, Gate, judge_gate
+from visionplan.solve.gates import ASKED, GATES, Gate, judge_gate
 from visionplan.solve.gates import price as rig_price
 from visionplan.solve.judge import Judge
 from visionplan.solve.rig import Contrast, Rig, Value, Verdict
@@ -37,9 +38,7 @@ def rigs_of(judge: Judge, chosen: Chosen) -> tuple[Rig, ...]:
         contrast = figures.contrasts(case, m)
     case.least_contrast = np.minimum.reduce(contrast)
     gates = [_gate_columns(gate, judge, case) for gate in GATES]
-    return tuple(
-        _rig(chosen, number, case.row(number), demands, gates, shown, contrast) for number in range(len(chosen))
-    )
+    return tuple(_rig(chosen, number, one, demands, gates, shown, contrast) for number, one in enumerate(case.rows()))
 
 
 def _case(judge: Judge, chosen: Chosen) -> Case:
@@ -66,10 +65,10 @@ def _case(judge: Judge, chosen: Chosen) -> Case:
     )
 
 
-def _figures(case: Case, m) -> dict[str, np.ndarray]:
+def _figures(case: Case, m) -> dict[str, list[float]]:
     hyperfocal = np.where(case.telecentric, np.nan, hyperfocal_distance(case.f, case.N, case.P))
     corner = figures.signal_to_noise_at(case, m, corner=True)
-    table = {
+    table: dict[str, np.ndarray] = {
         "magnification": m,
         "working_distance": case.WD(m),
         "sampling": case.P / m,
@@ -85,14 +84,14 @@ def _figures(case: Case, m) -> dict[str, np.ndarray]:
         "length": case.length(m),
         "price": rig_price(case),
     }
-    return {name: np.broadcast_to(values, m.shape)[:, 0] for name, values in table.items()}
+    return {name: np.broadcast_to(values, m.shape)[:, 0].tolist() for name, values in table.items()}
 
 
 def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, Any]:
     """Bounds, code, asked and got of one demand for every rig."""
     rigs = len(m)
     if demand not in judge.demands:
-        return {"lo": np.zeros(rigs), "hi": np.full(rigs, np.inf), "code": np.full(rigs, NOT_ASKED)}
+        return {"lo": [0.0] * rigs, "hi": [np.inf] * rigs, "code": [NOT_ASKED] * rigs}
     lo, hi, code = judge_demand(demand, case)
     lo, hi, code = _flat(lo, rigs), _flat(hi, rigs), _flat(code, rigs)
     at = m[:, 0]
@@ -101,8 +100,11 @@ def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, An
         got = _flat(demand.check(case, m), rigs)
     code = np.where((code == MET) & outside, MISSED, code)
     asked = demand.asked(case)
-    asked = list(zip(*(_flat(end, rigs) for end in asked))) if isinstance(asked, tuple) else _flat(asked, rigs)
-    return {"lo": lo, "hi": hi, "code": code, "asked": asked, "got": got}
+    if isinstance(asked, tuple):
+        asked = list(zip(*(_flat(end, rigs).tolist() for end in asked)))
+    else:
+        asked = _flat(asked, rigs).tolist()
+    return {"lo": lo.tolist(), "hi": hi.tolist(), "code": code.tolist(), "asked": asked, "got": got.tolist()}
 
 
 def _gate_columns(gate: Gate, judge: Judge, case: Case) -> np.ndarray:
@@ -123,7 +125,7 @@ def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast
     verdicts = [_verdict(demand, columns, number) for demand, columns in zip(DEMANDS, demands)]
     verdicts += [_gate_verdict(gate, int(codes[number]), one) for gate, codes in zip(GATES, gates)]
     block, row = chosen.blocks[chosen.block[number]], chosen.row[number]
-    bounds = {d.name: (float(c["lo"][number]), float(c["hi"][number])) for d, c in zip(DEMANDS, demands)}
+    bounds = {d.name: (c["lo"][number], c["hi"][number]) for d, c in zip(DEMANDS, demands)}
     whole = _ends(bounds)
     never = whole[0][0] == np.inf or whole[1][0] == 0
     stops = [float(n) for n, ok in zip(block.case.N[row], block.fits[row]) if ok] if fits else []
@@ -174,17 +176,17 @@ def _spacers(block, row: int) -> tuple[str, ...]:
 
 
 def _verdict(demand: Demand, columns: dict[str, Any], number: int) -> Verdict:
-    code = int(columns["code"][number])
+    code = columns["code"][number]
     if code == NOT_ASKED:
-        return Verdict(demand.name, None, None, None, None, demand.unit, VERDICTS[code])
-    lo, hi = float(columns["lo"][number]), float(columns["hi"][number])
+        return _UNASKED[demand.name]
+    lo, hi = columns["lo"][number], columns["hi"][number]
     never = lo == np.inf or hi == 0
     asked = columns["asked"][number]
     return Verdict(
         demand.name,
         None if never or lo == 0 else lo,
         None if never or hi == np.inf else hi,
-        tuple(map(float, asked)) if isinstance(asked, tuple) else _known(asked),  # type: ignore[arg-type]
+        asked if isinstance(asked, tuple) else _known(asked),
         _known(columns["got"][number]),
         demand.unit,
         VERDICTS[code],
@@ -194,9 +196,15 @@ def _verdict(demand: Demand, columns: dict[str, Any], number: int) -> Verdict:
 
 def _gate_verdict(gate: Gate, code: int, one: Case) -> Verdict:
     if code == NOT_ASKED:
-        return Verdict(gate.name, None, None, None, None, gate.unit, VERDICTS[code], gate=True)
+        return _UNASKED[gate.name]
     asked, got = gate.asked(one), gate.got(one)
     return Verdict(gate.name, None, None, _word(asked), _word(got), gate.unit, VERDICTS[code], gate=True)
+
+
+_UNASKED = {
+    asked.name: Verdict(asked.name, None, None, None, None, asked.unit, VERDICTS[NOT_ASKED], isinstance(asked, Gate))
+    for asked in ASKED
+}
 
 
 def _word(value: Any) -> Value:
@@ -204,7 +212,7 @@ def _word(value: Any) -> Value:
 
 
 def _known(value: Any) -> float | None:
-    return float(value) if np.isfinite(value) else None
+    return float(value) if isfinite(value) else None
 
 
 def _ends(bounds: dict[str, tuple[float, float]], names: Sequence[str] | None = None):

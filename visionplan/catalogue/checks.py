@@ -1,9 +1,8 @@
 """Checks between the cells of a row, and between rows."""
 
-from collections.abc import Callable
-
 import numpy as np
 
+from visionplan.catalogue.cells import expected
 from visionplan.catalogue.heading import Heading, missing
 from visionplan.catalogue.items import COLUMNS, REQUIRED_OF_KIND
 from visionplan.catalogue.ledger import Ledger
@@ -28,29 +27,18 @@ def check_lenses(values: dict, lines: list[int], heading: Heading, ledger: Ledge
         for name in REQUIRED_OF_KIND[kind]:
             _check_stated(name, kind, np.flatnonzero(rows & np.isnan(values[name])), lines, heading, ledger)
 
-    def note(rows: np.ndarray, column: str, found: Callable[..., str], expected: str) -> None:
-        for row in np.flatnonzero(rows):
-            said = found(*(figure(float(values[name][row]), 10) for name in _NAMED))
-            ledger.of_row(lines[row], said, expected, heading.written.get(column, column))
-
-    low, high, focal_length, nearest, principal = (values[name] for name in _NAMED)
-    note(
-        low > high, "f-number max", lambda low, high, *_: f"{high} is less than f-number min {low}", "at least as much"
-    )
+    low, high, focal_length, nearest, principal = (values[name] for name in _COMPARED)
+    for row in np.flatnonzero(low > high):
+        found = f"{figure(high[row])} is less than f-number min {figure(low[row])}"
+        ledger.of_row(lines[row], found, "at least as much", heading.written["f-number max"])
     # Where the nearest magnification gives the front principal plane, the sum is f (1 + 1/m), always more than f.
-    note(
-        ~telecentric & (nearest + principal <= focal_length),
-        "nearest object",
-        lambda *stated: (
-            "nearest object {3} mm and front principal {4} mm add up to no more than focal length {2} mm".format(
-                *stated
-            )
-        ),
-        "an object beyond the front focal point",
-    )
+    for row in np.flatnonzero(~telecentric & (nearest + principal <= focal_length)):
+        near, plane, focal = (figure(column[row], 10) for column in (nearest, principal, focal_length))
+        found = f"nearest object {near} mm and front principal {plane} mm make no more than focal length {focal} mm"
+        ledger.of_row(lines[row], found, "an object beyond the front focal point", heading.written["nearest object"])
 
 
-_NAMED = ("f-number min", "f-number max", "focal length", "nearest object", "front principal")
+_COMPARED = ("f-number min", "f-number max", "focal length", "nearest object", "front principal")
 
 
 def _check_stated(
@@ -63,4 +51,4 @@ def _check_stated(
         for row in lacking:
             if not ledger.knows(lines[row], heading.written[name]):
                 found = f"nothing is stated, and the lens is {kind}"
-                ledger.of_row(lines[row], found, column.doc.rstrip("."), heading.written[name])
+                ledger.of_row(lines[row], found, expected(column), heading.written[name])

@@ -3,8 +3,12 @@
 from pathlib import Path
 
 import pytest
+from hypothesis import example, given
+from hypothesis import strategies as st
 
 from visionplan.catalogue.folder import read_catalogue
+from visionplan.catalogue.ledger import Ledger
+from visionplan.catalogue.read import read_table
 from visionplan.faults import InputError
 
 NAMES = ("lenses.csv", "cameras.csv")
@@ -228,3 +232,32 @@ def test_nul_bytes(works):
     (fault,) = works.faults(cameras=text)
     assert (fault.line, fault.found) == (3, "a NUL byte stands here")
     assert works.read(skip_bad=True, cameras=text).cameras["id"] == ["K5", "B"]
+
+
+TOP = "id,mount,focal length [mm],f-number min,f-number max,nearest object [mm],price,stops,kind,length,stock\n"
+CELL = st.text(max_size=6) | st.sampled_from(
+    ["", "C", "5", "5 mm", "-1", "1e9", "telecentric", '"', '"a"', "\r", "4 8"]
+)
+
+
+@given(st.lists(st.lists(CELL, min_size=9, max_size=12).map(",".join), max_size=4).map("\n".join))
+@example('"')
+@example("a,b\n\n")
+def test_any_text_ends_in_a_table_or_in_faults(text):
+    ledger = Ledger("lenses.csv")
+    table = read_table((TOP + text).encode("utf-8", "surrogatepass"), "lenses", ledger)
+    lengths = {len(table[column]) for column in table.values}
+    assert lengths == {len(table)}
+    assert all(line > 1 for line in ledger.bad)
+    for fault in ledger.faults():
+        assert str(fault).isprintable()
+
+
+@given(st.binary(max_size=60), st.integers(0, 200), st.integers(0, 20))
+def test_any_bytes_end_in_a_table_or_in_faults(bytes_, at, cut):
+    good = (TOP + "L,C,25,1.8,16,200,9,2.8 4,,40 mm,3\n" * 3).encode()
+    ledger = Ledger("lenses.csv")
+    table = read_table(good[:at] + bytes_ + good[at + cut :], "lenses", ledger)
+    assert table is not None or ledger.fatal
+    for fault in ledger.faults():
+        str(fault).encode()

@@ -27,6 +27,7 @@ def judge_one(
     stop: float | None = None,
     rings: Sequence[str] | None = None,
     orientation: str | None = None,
+    grid: tuple[int, int] | None = None,
 ) -> Rig:
     """One rig in full.
 
@@ -37,6 +38,7 @@ def judge_one(
     stop : f-number it is set to; None for the best
     rings : ids of the rings on it, none of them for a bare lens; None for the best stack
     orientation : landscape or portrait; None for the better one
+    grid : how many cameras stand across and along the field; None for the best that the brief allows
 
     Raises
     ------
@@ -58,6 +60,9 @@ def judge_one(
         problem.ask.__dict__["arrangements"] = allowed
     if at is not None:
         problem.lens["M"][lens_row] = _magnification(problem, lens_row, at)
+    if grid is not None:
+        allowed = tuple(a for a in problem.ask.arrangements if (a.nx, a.ny) == grid)
+        problem.ask.__dict__["arrangements"] = allowed
     judge = Judge(problem)
     chosen = choose(judge, Items.of(problem), np.array([camera_row]), np.array([lens_row]))
     return rigs_of(judge, chosen)[0]

@@ -1,0 +1,149 @@
+"""What is worked out behind the keys: one thread, of the requests waiting the newest, the most urgent first.
+
+A ranking goes before the shortlist, the shortlist before the tolls. A request that a newer one overtakes is dropped;
+tolls are worked out line by line, so that nothing waits for them.
+"""
+
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, field, replace
+from threading import Condition, Thread
+
+from visionplan.brief.model import Brief
+from visionplan.catalogue.items import Catalogue
+from visionplan.faults import InputError
+from visionplan.solve import concede, judge_one, rank, tolls
+from visionplan.solve.rig import Concession, Ranking, Rig
+from visionplan.solve.take import Taken, take
+from visionplan.tui.work import Mark
+
+URGENCY = ("take", "rank", "judge", "concede", "marks", "more", "tolls")
+"""Kinds of requests, the most urgent first; of each kind only the newest waits."""
+
+
+@dataclass(frozen=True)
+class Request:
+    """What is asked of the solver."""
+
+    kind: str
+    generation: int
+    """Of the brief it is about."""
+    brief: Brief
+    catalogue: Catalogue
+    order: str = "value"
+    top: int = 20
+    marks: Sequence[Mark] = ()
+    """For marks all of the shortlist; for judge the one that is looked at."""
+    text: str = ""
+    concession: Concession | None = None
+
+
+@dataclass(frozen=True)
+class Answer:
+    """What came out."""
+
+    request: Request
+    ranking: Ranking | None = None
+    concessions: tuple[Concession, ...] | None = None
+    rigs: dict[Mark, Rig | str] = field(default_factory=dict)
+    """By mark (without its note) its rig, or why it can't be judged."""
+    tolls: dict[str, int] | None = None
+    """All lines worked out so far."""
+    taken: Taken | None = None
+    fault: str = ""
+
+
+class Solver:
+    """The thread and what waits for it."""
+
+    def __init__(self, answered: Callable[[Answer], None]):
+        self._answered = answered
+        """Called on the solver's thread."""
+        self._waiting: dict[str, Request] = {}
+        self._change = Condition()
+        self._closed = False
+        self._doing: Request | None = None
+        self._thread = Thread(target=self._run, name="solver", daemon=True)
+        self._thread.start()
+
+    def ask(self, request: Request) -> None:
+        """Put a request in the place of an older one of its kind."""
+        with self._change:
+            self._waiting[request.kind] = request
+            self._change.notify()
+
+    def drop(self, *kinds: str) -> None:
+        """Forget requests that wait."""
+        with self._change:
+            for kind in kinds:
+                self._waiting.pop(kind, None)
+
+    @property
+    def busy(self) -> bool:
+        """Whether anything waits or is under way."""
+        with self._change:
+            return bool(self._waiting) or self._doing is not None
+
+    def close(self) -> None:
+        """Let the thread end after what it is doing."""
+        with self._change:
+            self._closed = True
+            self._waiting.clear()
+            self._change.notify()
+
+    def _run(self) -> None:
+        while True:
+            with self._change:
+                self._doing = None
+                self._change.wait_for(lambda: self._waiting or self._closed)
+                if self._closed:
+                    return
+                kind = next(kind for kind in URGENCY if kind in self._waiting)
+                request = self._doing = self._waiting.pop(kind)
+            try:
+                self._do(request)
+            except InputError as error:
+                self._answer(Answer(request, fault=error.faults[0].found))
+            except MemoryError:
+                self._answer(Answer(request, fault="there is not enough memory to work this out"))
+            except Exception as error:  # a fault of the solver must not end the interface, and must be seen
+                self._answer(Answer(request, fault=f"fault of the program: {type(error).__name__}: {error}"))
+
+    def _answer(self, answer: Answer) -> None:
+        if not self._closed:
+            self._answered(answer)
+
+    def _do(self, request: Request) -> None:
+        brief, catalogue = request.brief, request.catalogue
+        if request.kind in ("rank", "more"):
+            self._answer(Answer(request, ranking=rank(brief, catalogue, request.order, request.top, False)))
+        elif request.kind == "concede":
+            self._answer(Answer(request, concessions=concede(brief, catalogue)))
+        elif request.kind in ("marks", "judge"):
+            self._answer(
+                Answer(request, rigs={replace(m, note=""): judged(brief, catalogue, m) for m in request.marks})
+            )
+        elif request.kind == "take":
+            assert request.concession
+            taken = take(request.text, brief.source, catalogue, request.concession)
+            self._answer(Answer(request, taken=taken))
+        elif request.kind == "tolls":
+            self._tolls(request)
+
+    def _tolls(self, request: Request) -> None:
+        found: dict[str, int] = {}
+        for line in sorted(request.brief.stated):
+            with self._change:
+                if self._closed or self._waiting:
+                    self._waiting.setdefault("tolls", request)
+                    return
+            found |= tolls(replace(request.brief, stated=frozenset({line})), request.catalogue)
+        self._answer(Answer(request, tolls=found))
+
+
+def judged(brief: Brief, catalogue: Catalogue, mark: Mark) -> Rig | str:
+    """The rig of a mark, or why there is none."""
+    try:
+        rings = None if mark.rings is None else list(mark.rings)
+        return judge_one(brief, catalogue, mark.camera, mark.lens, mark.at, mark.stop, rings, mark.orientation)
+    except InputError as error:
+        return error.faults[0].found

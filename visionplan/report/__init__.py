@@ -1,0 +1,1 @@
+"""Rankings and rigs as text: tables, drawings, files. Knows no interface."""

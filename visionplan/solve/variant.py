@@ -1,4 +1,4 @@
-"""The same rig with something set otherwise: another distance, stop, stack or orientation, other numbers of its lens."""
+"""The same rig with something set otherwise: its distance, stop, stack or orientation, or numbers of its lens."""
 
 from collections.abc import Mapping, Sequence
 from dataclasses import replace
@@ -20,7 +20,7 @@ def variant(
     brief: Brief | None = None,
     at: float | None = None,
     stop: float | None = None,
-    rings: Sequence[str] | None = None,
+    rings: Sequence[str] | str | None = None,
     orientation: str | None = None,
     lens: Mapping[str, float] | None = None,
 ) -> Rig:
@@ -29,6 +29,7 @@ def variant(
     Parameters
     ----------
     at : working distance it stands at, mm; None for the best
+    rings : ids, or "best"
     lens : column of its lens → the number that stands there instead
 
     Raises
@@ -37,6 +38,7 @@ def variant(
         As `judge_one` does.
     """
     case = rig.case
+    stack = rig.spacers if rings is None else None if rings == "best" else rings
     catalogue = _of_pair(case.problem.catalogue, case.cameras, case.lenses, lens or {})
     judged = judge_one(
         brief or case.brief,
@@ -45,7 +47,7 @@ def variant(
         rig.lens,
         at,
         stop or rig.stop,
-        rig.spacers if rings is None else rings,
+        stack,
         orientation or rig.orientation,
         rig.grid if orientation in (None, rig.orientation) else None,
     )

@@ -95,9 +95,7 @@ def lens_detail(case: Case):
 
 def light(case: Case):
     """The exposure yields the signal-to-noise ratio asked for."""
-    needed = electrons_for(case.brief.snr, case.variance)
-    with np.errstate(invalid="ignore"):
-        possible = ~(needed > case.saturation * (1 + EDGE))
+    needed, possible = electrons_for(case.brief.snr, case.variance), well_holds(case)
     if case.ask.irradiance is None:
         return _unless(possible, 0.0, np.inf)
     # electrons in a second where m tends to 0; they fall with (1 + m ψ)² from there
@@ -113,6 +111,12 @@ def light(case: Case):
             period = np.where(case.line, _line_period_root(fastest * case.P / (case.v * needed), case.psi), np.inf)
             hi = np.minimum(hi, period)
     return _unless(possible & (hi > 0), 0.0, hi)
+
+
+def well_holds(case: Case):
+    """Whether a pixel holds the electrons that the signal-to-noise ratio takes; so it is where nothing is stated."""
+    with np.errstate(invalid="ignore"):
+        return ~(electrons_for(case.brief.snr, case.variance) > case.saturation * (1 + EDGE))
 
 
 def perspective(case: Case):

@@ -124,6 +124,12 @@ def _concede_speed(case: Case, lo, hi):
     return [Give(case.v, bounds.fastest_rows(case) * case.P / lo, lo, -1)]
 
 
+def _lacks_light(case: Case):
+    """Quantum efficiency, or a capacity where nothing else limits the exposure; not where no light would do."""
+    unlimited = (case.ask.irradiance is not None) & np.isinf(case.ask.longest_exposure) & ~(case.line & (case.v > 0))
+    return (np.isnan(case.eta) | (np.isnan(case.saturation) & unlimited)) & bounds.well_holds(case)
+
+
 DEMANDS: tuple[Demand, ...] = (
     Demand(
         "cover",
@@ -278,15 +284,7 @@ DEMANDS: tuple[Demand, ...] = (
         "EMVA 1288 (linear); Lambertian part",
         ("light.snr",),
         of="rig",
-        lacks=lambda case: (
-            np.isnan(case.eta)
-            | (
-                np.isnan(case.saturation)
-                & (case.ask.irradiance is not None)
-                & np.isinf(case.ask.longest_exposure)
-                & ~(case.line & (case.v > 0))
-            )
-        ),
+        lacks=_lacks_light,
         concede=_concede_light,
     ),
     Demand(

@@ -93,4 +93,4 @@ def _contrast(case: Case, m, u, stop, towards_lens):
         blur = there * np.abs(towards_lens) / (case.N * case.nu(m))
         frequency = 1 / (2 * case.feature * there)
         value = otf(frequency, case.lam, stop, blur / (8 * stop)) * pixel_mtf(frequency, case.P)
-    return np.where(seen, value, 0.0)
+    return np.where(np.isnan(m), np.nan, np.where(seen, value, 0.0))

@@ -55,6 +55,12 @@ def _where(applies, codes):
     return np.where(applies, codes, NOT_ASKED)
 
 
+def _shutter(problem: Problem):
+    shutters = problem.catalogue.cameras["shutter"]
+    codes = MET if problem.brief.pulse is not None else _one_of(shutters, ["global"])
+    return _where(~problem.camera["line"], codes)
+
+
 def _blur_time(problem: Problem):
     """Pulse, else the camera's shortest exposure."""
     pulse = problem.brief.pulse
@@ -122,10 +128,10 @@ GATES: tuple[Gate, ...] = (
     Gate(
         "lens kind",
         "lens",
-        lambda problem: _one_of(problem.catalogue.lenses["kind"], problem.brief.lens_kinds),
+        lambda problem: _one_of(problem.lens_kinds, problem.brief.lens_kinds),
         lambda ask: ask.brief.lens_kinds is not None,
         _listing("lens_kinds"),
-        _words("lenses", "kind"),
+        lambda case: case.problem.lens_kinds[case.lenses],
         lines=("choose.lens_kinds",),
     ),
     Gate(
@@ -176,12 +182,9 @@ GATES: tuple[Gate, ...] = (
     Gate(
         "shutter",
         "camera",
-        lambda problem: _where(
-            ~problem.camera["line"] & (problem.brief.pulse is None),
-            _one_of(problem.catalogue.cameras["shutter"], ["global"]),
-        ),
+        _shutter,
         lambda ask: ask.v > 0,
-        lambda case: "global",
+        lambda case: "global" if case.brief.pulse is None else "global, or a light pulse",
         _words("cameras", "shutter"),
         lines=("motion.speed",),
     ),

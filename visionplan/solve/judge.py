@@ -107,7 +107,7 @@ class Rigs:
     @cached_property
     def fit(self) -> np.ndarray:
         """Whether a rig fits at some stop, gates of the pair included."""
-        return self.fits.any(axis=1) if self.ends is None else self.gates < MISSED
+        return np.asarray(self.fits.any(axis=1) if self.ends is None else self.gates < MISSED)
 
     @cached_property
     def best_grade(self) -> np.ndarray:
@@ -124,9 +124,10 @@ class Rigs:
 
     @cached_property
     def point(self) -> np.ndarray:
-        """Working point of each stop."""
-        b = self.bounds
-        return span.working_point(b.lo_p, b.hi_p, b.lo, b.hi, self.case.M)
+        """Working point of each stop; NaN where no magnification meets some demand, unless the rig stands already."""
+        b, case = self.bounds, self.case
+        M = np.where(case.telecentric & (b.hi == 0), np.nan, case.M)
+        return span.working_point(b.lo_p, b.hi_p, b.lo, b.hi, M)
 
     @cached_property
     def room(self) -> np.ndarray:

@@ -86,6 +86,11 @@ class Problem:
         return _order(self.catalogue.cameras["id"]), _order(self.catalogue.lenses["id"])
 
     @property
+    def lens_kinds(self) -> list[str]:
+        """Kind of each lens; entocentric where the file leaves it out."""
+        return [kind or "entocentric" for kind in self.catalogue.lenses["kind"]]
+
+    @property
     def camera_mounts(self) -> list[str]:
         """Mount of each camera, as the file words it."""
         return self.catalogue.cameras["mount"]

@@ -70,7 +70,7 @@ def _figures(case: Case, m) -> dict[str, list[float]]:
     corner = figures.signal_to_noise_at(case, m, corner=True)
     table: dict[str, np.ndarray] = {
         "magnification": m,
-        "working_distance": case.WD(m),
+        "working_distance": np.where(np.isnan(m), np.nan, case.WD(m)),
         "sampling": case.P / m,
         "width": np.where(case.line & (case.W == 0), np.nan, case.w / m),
         "height": np.where(case.line & (case.H == 0), np.nan, case.h / m),
@@ -81,7 +81,7 @@ def _figures(case: Case, m) -> dict[str, list[float]]:
         "snr_corner": corner,
         "needed_illuminance": figures.needed_illuminance(case, m),
         "hyperfocal": hyperfocal,
-        "length": case.length(m),
+        "length": np.where(np.isnan(m), np.nan, case.length(m)),
         "price": rig_price(case),
     }
     return {name: np.broadcast_to(values, m.shape)[:, 0].tolist() for name, values in table.items()}
@@ -147,7 +147,7 @@ def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast
         latitude=float(chosen.latitude[number]),
         shortfall=float(chosen.shortfall[number]),
         pinch=None if never else _pinch(bounds, whole, one),
-        held=_held(bounds, one) if fits else None,
+        held=_held(bounds, one) if span.holds(whole[0][0], whole[1][0]) else None,
         magnification=m,
         working_distance=figure["working_distance"],
         sampling=figure["sampling"],

@@ -5,11 +5,11 @@ from collections.abc import Sequence
 from typing import NoReturn
 
 from visionplan import __version__
-from visionplan.commands import catalogue, completion, concede, console, explain, new, rank
+from visionplan.commands import asbuilt, catalogue, completion, concede, console, explain, new, rank, sheet
 from visionplan.faults import InputError
 from visionplan.text import clean
 
-COMMANDS = (rank, explain, concede, catalogue, new, completion)
+COMMANDS = (rank, explain, sheet, asbuilt, concede, catalogue, new, completion)
 """In the order that the help lists them; without one of them the help is printed."""
 
 _STATUS = """\

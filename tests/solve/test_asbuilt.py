@@ -7,7 +7,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from tests.solve.works import BRIEF, CAMERA, LENS, RINGS, Bench, catalogue
+from tests.solve.traced import BRIEF, CAMERA, LENS, RINGS, Bench, catalogue
 from visionplan.brief.model import Layer
 from visionplan.faults import InputError
 from visionplan.solve import judge_one

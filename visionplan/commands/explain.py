@@ -14,12 +14,7 @@ def add(commands) -> None:
         "the source. As planned, or with the options as a rig that stands already.",
     )
     inputs.add_inputs(parser)
-    parser.add_argument("camera", metavar="CAMERA", help="id of the camera")
-    parser.add_argument("lens", metavar="LENS", help="id of the lens")
-    parser.add_argument("--at", metavar="LENGTH", type=inputs.length, help='working distance it stands at, "300 mm"')
-    parser.add_argument("--stop", metavar="N", type=inputs.f_number, help="f-number it is set to")
-    parser.add_argument("--rings", metavar="ID,ID", type=inputs.ids, help='ids of its spacer rings, "" for none')
-    parser.add_argument("--orientation", choices=("landscape", "portrait"), help="how the camera is turned")
+    inputs.add_rig(parser)
     parser.set_defaults(run=run)
 
 

@@ -25,6 +25,17 @@ def add_inputs(parser: argparse.ArgumentParser) -> None:
     parser.add_argument("--units", choices=("mm", "inch"), help="what to show lengths in; the brief's own if not said")
 
 
+def add_rig(parser: argparse.ArgumentParser, at: bool = True) -> None:
+    """Declare the arguments that name one rig, and what it is set to."""
+    parser.add_argument("camera", metavar="CAMERA", help="id of the camera")
+    parser.add_argument("lens", metavar="LENS", help="id of the lens")
+    if at:
+        parser.add_argument("--at", metavar="LENGTH", type=length, help='working distance it stands at, "300 mm"')
+    parser.add_argument("--stop", metavar="N", type=f_number, help="f-number it is set to")
+    parser.add_argument("--rings", metavar="ID,ID", type=ids, help='ids of its spacer rings, "" for none')
+    parser.add_argument("--orientation", choices=("landscape", "portrait"), help="how the camera is turned")
+
+
 def read_inputs(args: argparse.Namespace) -> tuple["Brief", "Catalogue"]:
     """The brief, in the units to show, and the catalogue; what was skipped in it is told.
 
@@ -74,16 +85,34 @@ def count(text: str) -> int:
     return int(text)
 
 
-def length(text: str) -> float:
-    """A length with its unit, as an argument, mm."""
+def any_length(text: str) -> float:
+    """A length of either sign with its unit, as an argument, mm."""
     from visionplan.units import UnitError, parse
 
     try:
-        value = parse(text, "mm")
+        return parse(text, "mm")
+    except UnitError as error:
+        raise argparse.ArgumentTypeError(f"{error.found}; expected {error.expected}") from None
+
+
+def length(text: str) -> float:
+    """A length with its unit, as an argument, mm."""
+    value = any_length(text)
+    if value <= 0:
+        raise argparse.ArgumentTypeError(f"{_quoted(text)} is no length greater than 0")
+    return value
+
+
+def pixels(text: str) -> float:
+    """A number of pixels, as an argument."""
+    from visionplan.units import UnitError, parse
+
+    try:
+        value = parse(text, "px")
     except UnitError as error:
         raise argparse.ArgumentTypeError(f"{error.found}; expected {error.expected}") from None
     if value <= 0:
-        raise argparse.ArgumentTypeError(f"{_quoted(text)} is no length greater than 0")
+        raise argparse.ArgumentTypeError(f"{_quoted(text)} is no number of pixels greater than 0")
     return value
 
 

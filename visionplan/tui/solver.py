@@ -14,6 +14,7 @@ from visionplan.faults import InputError
 from visionplan.solve import concede, judge_one, rank, tolls
 from visionplan.solve.rig import Concession, Ranking, Rig
 from visionplan.solve.take import Taken, take
+from visionplan.solve.variant import variant
 from visionplan.tui.work import Mark
 
 URGENCY = ("take", "rank", "judge", "concede", "marks", "more", "tolls")
@@ -33,6 +34,8 @@ class Request:
     top: int = 20
     marks: Sequence[Mark] = ()
     """For marks all of the shortlist; for judge the one that is looked at."""
+    rig: Rig | None = None
+    """For judge: the rig as planned, to be set otherwise."""
     text: str = ""
     concession: Concession | None = None
 
@@ -118,7 +121,9 @@ class Solver:
             self._answer(Answer(request, ranking=rank(brief, catalogue, request.order, request.top, False)))
         elif request.kind == "concede":
             self._answer(Answer(request, concessions=concede(brief, catalogue)))
-        elif request.kind in ("marks", "judge"):
+        elif request.kind == "judge":
+            self._answer(Answer(request, rigs={mark: moved(request.rig, mark) for mark in request.marks}))
+        elif request.kind == "marks":
             self._answer(
                 Answer(request, rigs={replace(m, note=""): judged(brief, catalogue, m) for m in request.marks})
             )
@@ -145,5 +150,14 @@ def judged(brief: Brief, catalogue: Catalogue, mark: Mark) -> Rig | str:
     try:
         rings = None if mark.rings is None else list(mark.rings)
         return judge_one(brief, catalogue, mark.camera, mark.lens, mark.at, mark.stop, rings, mark.orientation)
+    except InputError as error:
+        return error.faults[0].found
+
+
+def moved(rig: Rig | None, mark: Mark) -> Rig | str:
+    """A rig set as a mark says, or why it can't be."""
+    assert rig
+    try:
+        return variant(rig, None, mark.at, mark.stop, mark.rings, mark.orientation)
     except InputError as error:
         return error.faults[0].found

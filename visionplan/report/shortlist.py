@@ -1,0 +1,91 @@
+"""The shortlist as Markdown, CSV and JSON: the rigs that a person marked, side by side, each with its note."""
+
+import csv
+import io
+import json
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+
+from visionplan.report.csv import ranking_csv
+from visionplan.report.elevation import elevation
+from visionplan.report.figures import FIGURES, best
+from visionplan.report.json import ranking_json
+from visionplan.report.spanchart import span_chart
+from visionplan.report.words import limits, misses
+from visionplan.solve.rig import Ranking, Rig
+from visionplan.text import csv_cell, markdown
+
+_WIDTH = 80
+"""Terminal cells of a drawing."""
+
+
+@dataclass(frozen=True)
+class Entry:
+    """A rig of the shortlist."""
+
+    rig: Rig
+    note: str = ""
+    moved: bool = False
+    """Whether it stands where a person put it, not where the plan does."""
+
+
+def compared(entries: Sequence[Entry], system: str = "mm") -> list[tuple[str, list[str], frozenset[int]]]:
+    """Every figure with its value for each rig and the places of the best; figures that no rig has are left out."""
+    rigs = [entry.rig for entry in entries]
+    rows = []
+    for figure in FIGURES:
+        texts = [figure.text(rig, system) for rig in rigs]
+        if any(figure.value(rig) not in (None, "") for rig in rigs):
+            rows.append((figure.name, texts, best(figure, rigs)))
+    missed = ["; ".join(misses(rig, system)) or "nothing" for rig in rigs]
+    if set(missed) != {"nothing"}:
+        rows.insert(1, ("misses", missed, frozenset()))
+    return rows
+
+
+def shortlist_markdown(ranking: Ranking, entries: Sequence[Entry], system: str = "mm") -> str:
+    """A table with a column a rig, the best figures bold; then each rig's limits, span chart and elevation."""
+    names = [f"{entry.rig.camera} with {entry.rig.lens}" for entry in entries]
+    rows = [["", *(markdown(name) for name in names)], ["---"] * (len(names) + 1)]
+    for name, texts, top in compared(entries, system):
+        cells = [f"**{markdown(text)}**" if place in top else markdown(text) for place, text in enumerate(texts)]
+        rows.append([markdown(name), *cells])
+    if any(entry.note for entry in entries):
+        rows.append(["note", *(markdown(entry.note) for entry in entries)])
+    title = markdown(ranking.brief.title or "Shortlist")
+    blocks = [f"# {title}: shortlist", "Bold: the best of a row.", "\n".join(f"| {' | '.join(row)} |" for row in rows)]
+    for name, entry in zip(names, entries):
+        blocks += [f"## {markdown(name)}", *_told(entry, system)]
+    return "\n\n".join(blocks) + "\n"
+
+
+def _told(entry: Entry, system: str) -> list[str]:
+    rig = entry.rig
+    sentences = [f"Note: {entry.note}" if entry.note else "", "Set otherwise than planned." if entry.moved else ""]
+    sentences += [f"{limits(rig)}." if limits(rig) else "", *rig.assumptions]
+    told = "\n".join(f"- {markdown(sentence)}" for sentence in sentences if sentence)
+    drawings = ["\n".join(span_chart(rig, _WIDTH, system=system)), "\n".join(elevation(rig, _WIDTH, 12, system=system))]
+    return [*([told] if told else []), *(f"```text\n{drawing}\n```" for drawing in drawings)]
+
+
+def _listed(ranking: Ranking, entries: Sequence[Entry]) -> Ranking:
+    """The ranking with these rigs alone, numbered in their order."""
+    rigs = tuple(replace(entry.rig, rank=number) for number, entry in enumerate(entries, 1))
+    return replace(ranking, rigs=rigs)
+
+
+def shortlist_csv(ranking: Ranking, entries: Sequence[Entry], system: str = "mm") -> str:
+    """A row a rig, as a ranking has, with its note in the last column."""
+    rows = list(csv.reader(io.StringIO(ranking_csv(_listed(ranking, entries), system))))
+    notes = ["note", *(csv_cell(entry.note) for entry in entries)]
+    text = io.StringIO()
+    csv.writer(text, lineterminator="\n").writerows([*row, note] for row, note in zip(rows, notes))
+    return text.getvalue()
+
+
+def shortlist_json(ranking: Ranking, entries: Sequence[Entry]) -> str:
+    """A ranking's document with these rigs alone, each with its note."""
+    document = json.loads(ranking_json(_listed(ranking, entries)))
+    for rig, entry in zip(document["rigs"], entries):
+        rig["note"] = entry.note
+    return json.dumps(document, indent=2, allow_nan=False) + "\n"

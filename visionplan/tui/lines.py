@@ -1,0 +1,88 @@
+"""A widget that shows rows of text and sends, when they change, only the cells that did."""
+
+from collections.abc import Sequence
+
+from rich.segment import Segment as Piece
+from textual.geometry import Region
+from textual.strip import Strip
+from textual.widget import Widget
+
+from visionplan.report.lines import to_ascii
+from visionplan.tui.looks import style
+from visionplan.tui.rows import Row, fit
+
+_PLAIN = str.maketrans("▸◆━┿┯┷├┤┼─│╪╞╡═◂┊×▪", ">*=+++|||-|#[]=<:x#")
+"""Signs of the views in ASCII."""
+
+
+class Lines(Widget):
+    """Draws what `rows` returns; `redraw` compares it with what stands on the screen."""
+
+    DEFAULT_CSS = "Lines { height: 1; }"
+
+    def __init__(self, **more) -> None:
+        super().__init__(**more)
+        self._shown: list[Row] = []
+        self._look: object = None
+
+    def rows(self, width: int, height: int) -> Sequence[Row]:
+        """What stands in the widget now: at most `height` rows."""
+        raise NotImplementedError
+
+    def redraw(self) -> None:
+        """Show what has changed."""
+        width, height = self.size
+        if not (width and height and self.is_mounted and self.display):
+            return
+        look = (self.app.palette, self.app.ascii, width, height)  # type: ignore[attr-defined]
+        fresh = [self._fitted(row, width) for row in list(self.rows(width, height))[:height]]
+        fresh += [fit([], width)] * (height - len(fresh))
+        before, self._shown = self._shown, fresh
+        if look != self._look:
+            self._look = look
+            self.refresh()
+            return
+        regions = [
+            Region(start, y, end - start, 1)
+            for y, (old, new) in enumerate(zip(before, fresh))
+            if old != new
+            for start, end in [_changed(old, new, width)]
+            if end > start
+        ]
+        if regions:
+            self.refresh(*regions)
+
+    def _fitted(self, row: Row, width: int) -> Row:
+        if self.app.ascii:  # type: ignore[attr-defined]
+            row = [(to_ascii(text.translate(_PLAIN)), role) for text, role in row]
+        return fit(row, width)
+
+    def on_resize(self) -> None:
+        """Draw at the new size."""
+        self.redraw()
+
+    def on_show(self) -> None:
+        """Draw what changed while it was hidden."""
+        self._look = None
+        self.redraw()
+
+    def render_line(self, y: int) -> Strip:
+        """Give one row to Textual."""
+        palette = self.app.palette  # type: ignore[attr-defined]
+        if y >= len(self._shown):
+            return Strip([Piece(" " * self.size.width, style(palette, ""))], self.size.width)
+        pieces = [Piece(text, style(palette, role)) for text, role in self._shown[y]]
+        return Strip(pieces, self.size.width)
+
+
+def _changed(old: Row, new: Row, width: int) -> tuple[int, int]:
+    """From which cell to which two rows differ."""
+    before, after = _cells(old), _cells(new)
+    if len(before) != width or len(after) != width:  # characters wider than a cell
+        return 0, width
+    differ = [place for place, (one, other) in enumerate(zip(before, after)) if one != other]
+    return (differ[0], differ[-1] + 1) if differ else (0, 0)
+
+
+def _cells(row: Row) -> list[tuple[str, str]]:
+    return [(character, role) for text, role in row for character in text]

@@ -1,0 +1,195 @@
+"""The Rigs: the ranking, one row a pair; where nothing fits, the concessions over the nearest misses."""
+
+from typing import ClassVar
+
+from textual.binding import Binding, BindingType
+from textual.events import Key, Paste
+
+from visionplan.report.concession import concession_sentence
+from visionplan.report.figures import BY_NAME, room
+from visionplan.report.remarks import ORDERS, pair
+from visionplan.report.words import misses, pinch_words
+from visionplan.solve.rig import Rig
+from visionplan.text import figure
+from visionplan.tui.entry import Entry
+from visionplan.tui.pages import PickPage
+from visionplan.tui.pane import Item, Pane
+from visionplan.tui.rigs_table import Given, Table, concession_row, shown_rigs
+from visionplan.tui.rows import Row, ends, fit
+
+
+class RigsPane(Pane):
+    """The ranking under a cursor."""
+
+    BINDINGS: ClassVar[list[BindingType]] = [
+        Binding("enter", "choose", "look at / take"),
+        Binding("space", "mark", "mark"),
+        Binding("o", "order", "order"),
+        Binding("slash", "filter", "filter", key_display="/"),
+        Binding("m", "misses", "misses"),
+        Binding("escape", "unfilter", "filter off", show=False),
+    ]
+    number = 2
+    label = "Rigs"
+
+    def __init__(self) -> None:
+        super().__init__()
+        self.words = ""
+        self.entry: Entry | None = None
+        """The filter while it is being typed."""
+        self.misses = True
+        self._fitting: Table | None = None
+        self._missing: Table | None = None
+
+    def items(self, width: int) -> list[Item]:
+        """Concessions, rigs that fit, nearest misses."""
+        results = self.state.results
+        ranking = results.ranking
+        fitting, missing = shown_rigs(ranking, self.words, self.misses or not (ranking and ranking.fitting))
+        items: list[Item] = []
+        if ranking and not ranking.fitting:
+            items += self._concessions(width)
+        if fitting:
+            table = Table(fitting, self.state, width)
+            items.append((table.head(), None))
+            items += [self._rig(table, place) for place in range(len(fitting))]
+        elif ranking and ranking.fitting:
+            items.append(([("   No rig that fits holds these words.", "dim")], None))
+        if missing:
+            table = Table(missing, self.state, width)
+            title = "nearest misses" if not fitting else "misses"
+            items += [([], None), (fit([(f"   {title}", "head")], width), None), (table.head(), None)]
+            items += [self._rig(table, place) for place in range(len(missing))]
+        return items
+
+    def _concessions(self, width: int) -> list[Item]:
+        given = self.state.results.concessions
+        if given is None:
+            return [([("   Nothing fits. Working out what would have to give …", "head")], None)]
+        if not given:
+            return [([("   Nothing fits, and no change of one demand alone lets a rig fit.", "head")], None)]
+        title = "   Nothing fits. Any one of these would let a rig fit; Enter takes it into the brief:"
+        return [([(title, "head")], None)] + [
+            (concession_row(self.state, one, width, Given(one) == self.cursor), Given(one)) for one in given
+        ]
+
+    def _rig(self, table: Table, place: int) -> Item:
+        rig = table.rigs[place]
+        key = (rig.camera, rig.lens)
+        return table.row(place, key == self.cursor, self.state.marked(key)), key
+
+    @property
+    def rig(self) -> Rig | None:
+        """The rig under the cursor."""
+        ranking = self.state.results.ranking
+        found = (rig for rig in (ranking.rigs if ranking else ()) if (rig.camera, rig.lens) == self.cursor)
+        return next(found, None)
+
+    def fixed(self, width: int) -> list[Row]:
+        """Order and filter."""
+        order = self.app.order
+        if self.entry is not None:
+            return [
+                [("   filter ", "strong"), *self.entry.row(min(40, width - 40)), ("  Enter keeps, Esc drops", "dim")]
+            ]
+        left: Row = [("   by ", "dim"), (order, "strong"), (f": {ORDERS[order]}", "dim")]
+        right: Row = [(f"filter: {self.words} (Esc drops it) ", "pinch")] if self.words else []
+        if not self.misses:
+            right = [*right, ("misses hidden ", "dim")]
+        return [ends(left, right, width)]
+
+    def hint(self) -> str:
+        """The whole of what the row may have cut."""
+        system = self.state.brief.units
+        if isinstance(self.cursor, Given):
+            given = self.cursor.concession
+            sentence = concession_sentence(self.state.asked, given, system)
+            return f"{sentence[0].upper()}{sentence[1:]}: then {pair(given.camera, given.lens)} fits. Enter takes it."
+        rig = self.rig
+        if rig is None:
+            return ""
+        price = BY_NAME["price"].text(rig, system)
+        name = pair(rig.camera, rig.lens)
+        if rig.fits:
+            doubt = f"; unknown: {', '.join(rig.unknown)}" if rig.unknown else ""
+            rings = f" with {BY_NAME['spacer rings'].text(rig)}" if rig.spacers else ""
+            return (
+                f"{name}{rings} at f/{figure(rig.stop)}, {price}: {rig.grade}, {room(rig.latitude)} of room, "
+                f"{pinch_words(rig)}{doubt}."
+            )
+        return f"{name}, {price}, misses {'; '.join(misses(rig, system))}."
+
+    def moved(self) -> None:
+        """Let the rig view follow, and fetch more of the ranking near its end."""
+        rig = self.rig
+        ranking = self.state.results.ranking
+        if rig and ranking and rig.rank > len(ranking.rigs) - 3:
+            self.app.more()
+        if self.app.wide:
+            self.app.look_at(rig)
+        super().moved()
+
+    def action_choose(self) -> None:
+        """Look at the rig, or take the concession."""
+        if isinstance(self.cursor, Given):
+            self.app.take(self.cursor.concession)
+        elif self.rig:
+            self.app.look_at(self.rig)
+            self.app.action_view(3)
+
+    def action_mark(self) -> None:
+        """Put the rig on the shortlist or take it off."""
+        if self.rig and self.app.may_change():
+            key = (self.rig.camera, self.rig.lens)
+            on = self.state.toggle(key)
+            count = len(self.state.work.marks)
+            self.app.tell(f"{pair(*key)} {'marked' if on else 'no longer marked'}; {count} on the shortlist (4).")
+            self.app.marks_changed()
+
+    def action_order(self) -> None:
+        """Choose another order."""
+        options = [(name, words, name) for name, words in ORDERS.items()]
+        self.app.push_screen(PickPage("Which rig comes first?", options, current=self.app.order), self.app.set_order)
+
+    def action_misses(self) -> None:
+        """Show or hide what doesn't fit."""
+        self.misses = not self.misses
+        self.app.redraw()
+
+    def action_filter(self) -> None:
+        """Type words that a rig must hold."""
+        self.entry = Entry(self.words)
+        self.app.more()
+        self.app.tell("Words of camera, lens, maker, interface, mount, pinch or grade, in any order.")
+
+    def action_unfilter(self) -> None:
+        """Show every rig again."""
+        self.words = ""
+        self.app.redraw()
+
+    def check_consume_key(self, key: str, character: str | None) -> bool:
+        """Keys go into the filter while it is being typed."""
+        return self.entry is not None
+
+    def on_key(self, event: Key) -> None:
+        """Type the filter."""
+        if self.entry is None:
+            return
+        event.stop()
+        event.prevent_default()
+        if event.key in ("escape", "enter"):
+            self.words = "" if event.key == "escape" else self.entry.text
+            self.entry = None
+        elif event.key in ("up", "down"):
+            self.action_move(-1 if event.key == "up" else 1)
+        elif self.entry.press(event.key, event.character):
+            self.words = self.entry.text
+        self.app.redraw()
+
+    def on_paste(self, event: Paste) -> None:
+        """Type what was pasted."""
+        if self.entry is not None:
+            event.stop()
+            self.entry.insert(event.text)
+            self.words = self.entry.text
+            self.app.redraw()

@@ -21,7 +21,8 @@ def concession_sentence(brief: Brief, concession: Concession, system: str = "mm"
 
 def concession_change(concession: Concession) -> str:
     """By how much it changes what was asked: "−12 %", "+3.4 %"."""
-    return f"{100 * (concession.needed / concession.asked - 1):+.2g} %".replace("-", "−")
+    change = 100 * (concession.needed / concession.asked - 1)
+    return f"{'+' if change > 0 else '−'}{figure(abs(change), 2)} %"
 
 
 def _looser(concession: Concession, unit: str, system: str) -> float:

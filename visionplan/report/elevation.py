@@ -74,7 +74,10 @@ class _Drawing:
         """Columns at the left for what has no stated length."""
         self.scale = self.rounded((self.right - self.left) / (width - self.marks - 2))
         """mm a column"""
-        self.sentences = list(profile.not_stated)
+        lacking = profile.not_stated
+        self.sentences = [f"not stated: {', '.join(lacking)}"] if lacking else []
+        if self.roomy:
+            self.sentences = [f"{name} not stated: {drawn}" for name, drawn in lacking.items()]
         self.measures: list[Measure] = []
         most = 2 * math.ceil(profile.high / (2 * ASPECT * self.scale)) + 1
         kept = min(most, max(3, height // 2))
@@ -83,6 +86,8 @@ class _Drawing:
         self.middle = max(1, (rows - 1) // 2)
         self.scale = self.rounded(max(self.scale, profile.high / (ASPECT * (2 * self.middle + 1))))
         self.middle = max(self.rows_to(profile.widest), self.rows_within(profile.solid))
+        while self.measures and 2 * self.middle + 1 + len(self.measures) + len(self.lines()) > height:
+            self.measures.pop()  # the scale, rounded up, may have become longer to tell
         self.canvas = Canvas(width, 2 * self.middle + 1 + len(self.measures))
 
     def fill(self, rows: int) -> None:
@@ -106,8 +111,9 @@ class _Drawing:
     def lines(self) -> list[str]:
         """The sentences beneath the drawing."""
         column, row = self.length(self.scale), self.length(ASPECT * self.scale)
-        aspect = "to scale where a character is twice as high as wide" if self.roomy else "cells 1 : 2"
-        scale = f"{column} a column, {row} a row, {aspect}"
+        scale = f"cells of {column} × {row}"
+        if self.roomy:
+            scale = f"{column} a column, {row} a row, to scale where a character is twice as high as wide"
         text = "; ".join([scale, *self.sentences])
         return wrap(to_ascii(text) if self.ascii else text, self.width)
 

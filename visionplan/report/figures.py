@@ -110,7 +110,7 @@ FIGURES: tuple[Figure, ...] = (
     Figure("latitude", lambda rig: rig.latitude, "1", True, better=1, words=lambda rig: room(rig.latitude)),
     Figure("shortfall", lambda rig: rig.shortfall, "1", True, better=-1, words=lambda rig: short(rig.shortfall)),
     Figure("pinch", lambda rig: pinch_words(rig) or None),
-    Figure("unknown", lambda rig: ", ".join(rig.unknown), none="nothing"),
+    Figure("unknown", lambda rig: ", ".join(rig.unknown) or None, none="nothing"),
     Figure("stop", lambda rig: rig.stop),
     Figure("stops that fit", lambda rig: ", ".join(map(figure, rig.stops)) or None),
     Figure("spacer rings", rings),

@@ -134,16 +134,16 @@ class Profile:
         return max(2 * self.widest, self.solid)
 
     @cached_property
-    def not_stated(self) -> list[str]:
-        """What the drawing leaves out or takes for granted, in sentences without a full stop."""
+    def not_stated(self) -> dict[str, str]:
+        """What the catalogue leaves out that a drawing needs, and how it is drawn without it."""
         case = self.rig.case
-        told = []
+        told = {}
         if math.isnan(case.lens_length):
-            told.append("lens length not stated: lens and camera are marks, not to scale")
+            told["lens length"] = "lens and camera are marks, not to scale"
         elif math.isnan(case.camera_length):
-            told.append("camera length not stated: the camera is a mark, not to scale")
+            told["camera length"] = "the camera is a mark, not to scale"
         if not case.telecentric and math.isnan(case.d):
-            told.append("flange distance not stated: the focus is drawn without its extension")
+            told["flange distance"] = "the lens is drawn without what focusing draws it out"
         if math.isnan(case.lens_diameter):
-            told.append("lens diameter not stated: drawn one row high")
+            told["lens diameter"] = "drawn one row high"
         return told

@@ -21,6 +21,7 @@ ORDERS = {
     "price": "least price",
     "sampling": "finest sampling",
     "length": "shortest to the camera back",
+    "yield": "most builds within tolerance that fit",
 }
 _ORDER_FIGURES: dict[str, Callable[[Rig, str], str]] = {
     "latitude": lambda rig, system: f"{room(rig.latitude)} of room",
@@ -80,11 +81,11 @@ def _reason(ranking: Ranking, rows: Sequence[Row], system: str) -> str:
         return f"the only pair that fits: {first.grade}, {room(first.latitude)} of room"
     if ranking.order == "value":
         return _best_value(first, second)
-    text = _ORDER_FIGURES[ranking.order]
-    words = f"{ORDERS[ranking.order]}: {text(first, system)}"
-    if second is None:
+    words, text = ORDERS[ranking.order], _ORDER_FIGURES.get(ranking.order)
+    if text is None:
         return words
-    return f"{words}, the next {text(second, system)}"
+    next_one = f", the next {text(second, system)}" if second else ""
+    return f"{words}: {text(first, system)}{next_one}"
 
 
 def _best_value(first: Rig, second: Rig | None) -> str:
@@ -174,7 +175,8 @@ def folded(row: Row) -> str:
     cameras = row.rig.case.problem.catalogue.cameras
     names = []
     for other in row.folded:
-        apart = [clean(cameras["interface"][other.case.cameras]), BY_NAME["price"].text(other)]
+        price = "price not stated" if other.price is None else BY_NAME["price"].text(other)
+        apart = [clean(cameras["interface"][other.case.cameras]), price]
         names.append(f"{clean(other.camera)} ({', '.join(filter(None, apart))})")
     return ", ".join(names)
 

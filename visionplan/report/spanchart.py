@@ -9,7 +9,7 @@ from visionplan.report.axis import Axis, axis_over
 from visionplan.report.canvas import Canvas, Segment, join
 from visionplan.report.figures import room, short
 from visionplan.report.lines import to_ascii, wrap
-from visionplan.report.words import lacking, missed_by, misses, pinch_words
+from visionplan.report.words import is_unknown, lacking, missed_by, misses, pinch_words
 from visionplan.solve.demands import BY_NAME
 from visionplan.solve.rig import Rig, Verdict
 from visionplan.solve.span import EDGE
@@ -144,7 +144,7 @@ class _Chart:
         """What stands in place of a bar; "" where there is one."""
         if verdict.verdict == "not asked":
             return "not asked"
-        if verdict.name in self.rig.unknown:
+        if is_unknown(self.rig, verdict):
             strictly = ": strictly a miss" if verdict.verdict == "missed" else ""
             return f"unknown{strictly}: {lacking(self.rig, verdict)}"
         return "no magnification holds it" if verdict.never else ""

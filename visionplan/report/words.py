@@ -41,23 +41,33 @@ def got_words(rig: Rig, verdict: Verdict, system: str = "mm") -> str:
     """What the rig gets; where that isn't known, what is missing."""
     if verdict.verdict == "not asked":
         return "–"
-    if verdict.got is None and verdict.name in rig.unknown:
+    if is_unknown(rig, verdict):
         return lacking(rig, verdict)
     if verdict.got is None:
         return "–"
     return value_words(verdict.name, verdict.got, verdict.unit, system)
 
 
+def is_unknown(rig: Rig, verdict: Verdict) -> bool:
+    """Whether the catalogue leaves out what a demand or gate needs; of a strict brief that is a miss."""
+    if verdict.name in rig.unknown:
+        return True
+    strictly = verdict.verdict == "missed" and rig.case.brief.strict
+    return strictly and (verdict.got is None if verdict.gate else verdict.never and bool(_missing(rig, verdict)))
+
+
 def lacking(rig: Rig, verdict: Verdict) -> str:
     """What the catalogue leaves out that a demand or gate needs: "length of the lens not stated"."""
-    if verdict.gate:
-        return "not stated"
-    missing = [
+    missing = [] if verdict.gate else _missing(rig, verdict)
+    return f"{', '.join(missing)} not stated".lstrip()
+
+
+def _missing(rig: Rig, verdict: Verdict) -> list[str]:
+    return [
         _PLAIN_WORDS.get(symbol, SYMBOLS[symbol][0])
         for symbol in BY_NAME[verdict.name].symbols
         if symbol not in _DERIVED and _unknown(getattr(rig.case, symbol))
     ]
-    return (", ".join(missing) or "what it needs") + " not stated"
 
 
 def _unknown(value) -> bool:
@@ -89,7 +99,7 @@ def missed_by(verdict: Verdict, system: str = "mm") -> str:
 
 def miss_words(rig: Rig, verdict: Verdict, system: str = "mm") -> str:
     """A missed demand or gate in short: "cover by 12 %", "mount: C camera, F lens"."""
-    if verdict.name in rig.unknown:
+    if is_unknown(rig, verdict):
         return f"{verdict.name}: {lacking(rig, verdict)}, which is strictly a miss"
     if verdict.gate:
         asked = asked_words(verdict, system)

@@ -4,10 +4,10 @@ import math
 from collections.abc import Iterator, Sequence
 
 from visionplan.optics.depth import classic_limits
+from visionplan.report.between import layers, mirror
 from visionplan.report.cautions import cautions
 from visionplan.report.elevation import elevation
 from visionplan.report.figures import field, grid, room
-from visionplan.report.between import layers, mirror
 from visionplan.report.page import Section, page_markdown, page_text
 from visionplan.report.words import lacking, misses, pinch_words
 from visionplan.solve import advice

@@ -117,6 +117,10 @@ SPACER_COLUMNS = (
     _ID,
     _MOUNT,
     _positive("length", "mm", "How far it moves the lens from the camera.", required=True),
+    Column(
+        "camera mount", "Of an adapter: the thread or bayonet on its camera side, where `mount` is on its lens side."
+    ),
+    _positive("travel", "mm", "Of a helicoid: how much longer it can be made."),
     _PRICE,
     Column("quantity", "How many there are; no limit when empty.", "count", open_low=False),
 )

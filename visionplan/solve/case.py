@@ -53,6 +53,7 @@ SYMBOLS: dict[str, tuple[str, str]] = {
     "camera_length": ("length of the camera", "mm"),
     "d": ("camera flange distance less that of the lens", "mm"),
     "rings": ("length of the spacer stack", "mm"),
+    "t": ("travel of the helicoids in the spacer stack", "mm"),
     "e": ("least extension: flange difference and spacers", "mm"),
 }
 """Symbol → what it is, and its unit."""
@@ -162,6 +163,11 @@ def _flange_difference(case: Case):
     return _column(np.where(equal, 0.0, cameras[case.cameras] - lenses[case.lenses]))
 
 
+def _same_thread(case: Case):
+    camera_thread, lens_thread, _ = case.problem.thread
+    return _column(camera_thread[case.cameras] == lens_thread[case.lenses])
+
+
 def _inverse_focal_length(case: Case):
     return 1 / case.f
 
@@ -184,4 +190,5 @@ _DERIVED = {
     "phi": _inverse_focal_length,
     "psi": _inverse_pupil_ratio,
     "e": lambda case: case.d + case.rings,
+    "joined": _same_thread,
 }

@@ -152,7 +152,7 @@ def _columns(
     code = np.maximum(np.maximum(pair_code, rigs.gates), contrast)
     arrangement = rigs.arrangement
     counted = np.zeros(len(rows), int)
-    for here, stacks in problem.stacks_by_thread(rigs.lenses, arrangement.cameras):
+    for here, stacks in problem.stacks_between(rigs.cameras, rigs.lenses, arrangement.cameras):
         counted[here] = stacks.rings[rigs.stack[here]]
     return {
         "pair": pair,

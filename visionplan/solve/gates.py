@@ -73,13 +73,12 @@ def longest_pause(ask: Ask) -> float:
 
 
 def _mount(case: Case):
-    threads = case.problem.thread
-    same = threads[0][case.cameras] == threads[1][case.lenses]
     allowed = case.brief.mounts
-    if allowed is not None:
-        same = same & _listed(case.problem.camera_mounts, allowed)[case.cameras]
-        same = same & _listed(case.problem.lens_mounts, allowed)[case.lenses]
-    return np.where(same, MET, MISSED)[:, None]
+    if allowed is None:
+        return np.where(case.joined, MET, MISSED)
+    cameras = _listed(case.problem.camera_mounts, allowed)[case.cameras]
+    lenses = _listed(case.problem.lens_mounts, allowed)[case.lenses]
+    return np.where(case.joined & (cameras & lenses)[:, None], MET, MISSED)
 
 
 def _listed(mounts: Sequence[str], allowed: Sequence[str]):
@@ -157,7 +156,7 @@ GATES: tuple[Gate, ...] = (
         "pair",
         _mount,
         lambda ask: True,
-        lambda case: ", ".join(case.brief.mounts or ()) or "same thread",
+        lambda case: ", ".join(case.brief.mounts or ()) or "same thread or an adapter",
         lambda case: f"{_words('cameras', 'mount')(case)} camera, {_words('lenses', 'mount')(case)} lens",
         lines=("choose.mounts",),
     ),

@@ -261,7 +261,7 @@ class Judge:
 
     def _bare(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray) -> Case:
         none = np.zeros((len(cameras), 1))
-        return case_of(self.problem, arrangement, cameras, lenses, rings=none, ring_price=none)
+        return case_of(self.problem, arrangement, cameras, lenses, rings=none, ring_price=none, t=none)
 
     def _possible(self, arrangement: Arrangement, lenses: np.ndarray, of_pair: Bounds) -> np.ndarray:
         """Rows whose pair demands leave something to some stop of the lens."""
@@ -283,26 +283,31 @@ class Judge:
         """The rigs, one for each spacer stack that can matter."""
         rows = [np.arange(len(case.cameras))]
         stack = [np.zeros(len(case.cameras), int)]
+        between = self.problem.stacks_between
         low, high = _extensions(case, bounds, all_stacks)
-        for here, stacks in self.problem.stacks_by_thread(case.lenses, arrangement.cameras):
-            length = stacks.length
+        for here, stacks in between(case.cameras, case.lenses, arrangement.cameras):
+            length, travel = stacks.length, stacks.travel.max()
             if len(length) == 1:
                 continue
-            first = np.searchsorted(length, low[here] - 1e-9, "left")
+            first = np.searchsorted(length, low[here] - travel - 1e-9, "left")
             last = np.searchsorted(length, high[here] + 1e-9, "right")
             if all_stacks:
-                first, last = np.maximum(first - 1, 0), np.minimum(last + 1, len(length))
+                # without helicoids the nearest to either side; with them a longer stack may reach less far
+                first = np.where(travel > 0, 0, np.maximum(first - 1, 0))
+                last = np.minimum(last + 1, len(length))
             first = np.maximum(first, 1)  # the empty stack is there already
             count = np.maximum(last - first, 0)
             rows.append(np.repeat(here, count))
             begin = np.cumsum(count) - count
             stack.append(np.arange(count.sum()) - np.repeat(begin - first, count))
         row, chosen = np.concatenate(rows), np.concatenate(stack)
-        rings, price = np.zeros((len(row), 1)), np.zeros((len(row), 1))
-        for here, stacks in self.problem.stacks_by_thread(case.lenses[row], arrangement.cameras):
-            rings[here, 0], price[here, 0] = stacks.length[chosen[here]], stacks.price[chosen[here]]
-        grown = case_of(self.problem, arrangement, case.cameras[row], case.lenses[row], rings=rings, ring_price=price)
-        return grown, bounds.take(row), chosen, row
+        cameras, lenses = case.cameras[row], case.lenses[row]
+        given = {name: np.zeros((len(row), 1)) for name in ("rings", "ring_price", "t")}
+        given["joined"] = np.zeros((len(row), 1), bool)
+        for here, stacks in between(cameras, lenses, arrangement.cameras):
+            for name, of_stack in zip(given, (stacks.length, stacks.price, stacks.travel, stacks.joins)):
+                given[name][here, 0] = of_stack[chosen[here]]
+        return case_of(self.problem, arrangement, cameras, lenses, **given), bounds.take(row), chosen, row
 
 
 def _extensions(case: Case, bounds: Bounds, all_stacks: bool):

@@ -47,7 +47,7 @@ def judge_one(
     """
     camera_row = _row(catalogue.cameras, camera)
     lens_row = _row(catalogue.lenses, lens)
-    stack = None if rings is None else _stack(catalogue, lens_row, rings)
+    stack = None if rings is None else _stack(catalogue, camera_row, lens_row, rings)
     problem = Problem(brief, catalogue, stop=stop, stack=stack)
     if orientation is not None:
         portrait = orientation == "portrait"
@@ -80,15 +80,24 @@ def _magnification(problem: Problem, lens: int, at: float) -> float:
     return float(magnification_at(f, s))
 
 
-def _stack(catalogue: Catalogue, lens: int, rings: Sequence[str]) -> Stacks:
-    rows = [_row(catalogue.spacers, ring) for ring in rings]
-    mount = catalogue.lenses["mount"][lens]
+def _stack(catalogue: Catalogue, camera: int, lens: int, rings: Sequence[str]) -> Stacks:
+    spacers = catalogue.spacers
+    rows = [_row(spacers, ring) for ring in rings]
+    lens_thread = thread(catalogue.lenses["mount"][lens])
+    camera_thread = thread(catalogue.cameras["mount"][camera])
+    adapters = 0
     for row, ring in zip(rows, rings):
-        if thread(catalogue.spacers["mount"][row]) != thread(mount):
-            raise _fault("rings", f"ring {ring} has a {catalogue.spacers['mount'][row]} mount", f"a ring for {mount}")
-    total = sum(catalogue.spacers["length"][row] for row in rows)
-    price = sum(catalogue.spacers["price"][row] for row in rows)
-    return Stacks(np.array([total], float), np.array([len(rows)]), np.array([price], float), (tuple(sorted(rings)),))
+        lens_side = thread(spacers["mount"][row])
+        camera_side = thread(spacers["camera mount"][row] or spacers["mount"][row])
+        adapters += lens_side != camera_side
+        if not {lens_side, camera_side} <= {lens_thread, camera_thread} or adapters > 1:
+            threads = " and ".join(dict.fromkeys((lens_thread, camera_thread)))
+            raise _fault("rings", f"ring {ring} joins {lens_side} to {camera_side}", f"rings between {threads}")
+    total = [sum(spacers[name][row] for row in rows) for name in ("length", "price")]
+    travel = sum(np.nan_to_num(spacers["travel"][row]) for row in rows)
+    length, travel, count, price = (np.array([value], float) for value in (total[0], travel, len(rows), total[1]))
+    joins = np.array([camera_thread == lens_thread or adapters == 1])
+    return Stacks(length, travel, count, price, joins, (tuple(sorted(rings)),))
 
 
 def _row(table: Table, id: str) -> int:

@@ -16,7 +16,7 @@ from visionplan.optics.light import noise_variance
 from visionplan.optics.mounts import FLANGE_DISTANCE, thread
 from visionplan.optics.stops import stops_between
 from visionplan.solve.ask import Arrangement, Ask
-from visionplan.solve.stacks import Stacks, stacks_of
+from visionplan.solve.stacks import Stacks, stacks_between
 
 DEFAULT_TRANSMITTANCE = 0.9
 
@@ -105,25 +105,42 @@ class Problem:
         """Whether there is any spacer stack but the empty one."""
         return bool(len(self.catalogue.spacers)) or self.stack is not None
 
-    def stacks_by_thread(self, lenses: np.ndarray, cameras: int) -> Iterator[tuple[np.ndarray, Stacks]]:
-        """Positions in `lenses` (rows) and their spacer stacks when that many cameras share the rings."""
+    def stacks_between(
+        self, cameras: np.ndarray, lenses: np.ndarray, count: int
+    ) -> Iterator[tuple[np.ndarray, Stacks]]:
+        """Positions in the rows of `cameras` and `lenses`, and the spacer stacks between them when `count` rigs share
+        the rings."""
         if not self.has_rings:
             return
-        for number, name in enumerate(self.thread[2]):
-            here = np.flatnonzero(self.thread[1][lenses] == number)
-            if len(here):
-                yield here, self._stacks_of(name, cameras)
+        camera_thread, lens_thread, names = self.thread
+        pair = camera_thread[cameras] * len(names) + lens_thread[lenses]
+        for number in np.unique(pair):
+            yield np.flatnonzero(pair == number), self._stacks(*divmod(int(number), len(names)), count)
 
     @cached_property
-    def _known_stacks(self) -> dict[tuple[str, int], Stacks]:
+    def joinable(self) -> np.ndarray:
+        """Whether a camera's thread (row) and a lens's (column) are equal or can be joined by an adapter."""
+        names = self.thread[2]
+        joins = np.eye(len(names), dtype=bool)
+        if self.has_rings:
+            for camera in range(len(names)):
+                for lens in range(len(names)):
+                    joins[camera, lens] |= bool(self._stacks(camera, lens, 1).joins.any())
+        return joins
+
+    @cached_property
+    def _known_stacks(self) -> dict[tuple[int, int, int], Stacks]:
         return {}
 
-    def _stacks_of(self, of_thread: str, cameras: int) -> Stacks:
+    def _stacks(self, camera_thread: int, lens_thread: int, count: int) -> Stacks:
         if self.stack is not None:
             return self.stack
-        key = of_thread, cameras
+        key = camera_thread, lens_thread, count
         if key not in self._known_stacks:
-            self._known_stacks[key] = stacks_of(self.catalogue.spacers, of_thread, cameras)
+            names = self.thread[2]
+            self._known_stacks[key] = stacks_between(
+                self.catalogue.spacers, names[camera_thread], names[lens_thread], count
+            )
         return self._known_stacks[key]
 
     def sides(self, arrangement: Arrangement) -> tuple[np.ndarray, np.ndarray]:

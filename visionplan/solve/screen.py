@@ -38,7 +38,7 @@ def candidates(judge: Judge, arrangement: Arrangement, cameras: np.ndarray, lens
     pairs = (finest[:, None] <= most * (1 + ROOM)) & (ratio[:, None] * (1 + ROOM) >= least)
     if "mount" in asked:
         camera_thread, lens_thread, _ = problem.thread
-        pairs &= camera_thread[cameras][:, None] == lens_thread
+        pairs &= problem.joinable[camera_thread[cameras]][:, lens_thread]
     if "image circle" in asked:
         image = np.maximum(w, h) if arrangement.line else np.hypot(w, h)
         circle = problem.lens["circle"]

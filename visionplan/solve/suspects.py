@@ -3,10 +3,9 @@
 import numpy as np
 
 from visionplan.optics.conjugates import magnification_at
-from visionplan.optics.mounts import thread
 from visionplan.solve.case import Case
 from visionplan.solve.rig import Rig
-from visionplan.solve.stacks import stacks_of
+from visionplan.solve.settings import stacks_of
 from visionplan.solve.target import Measured
 
 MOST = 3
@@ -39,10 +38,8 @@ def lenses_like(case: Case, m: Measured, distance: tuple[float, float]) -> tuple
 
 def stacks_reaching(rig: Rig, extension: float) -> tuple[str, ...]:
     """Spacer stacks with which the rig's focus ring reaches an image-side extension, fewest rings first."""
-    case, catalogue = rig.case, rig.case.problem.catalogue
-    mount = catalogue.lenses["mount"][case.lenses]
-    stacks = stacks_of(catalogue.spacers, thread(mount), rig.grid[0] * rig.grid[1])
+    case, stacks = rig.case, stacks_of(rig)
     least = case.d + stacks.length
-    rows = np.flatnonzero((least <= extension) & (extension <= least + case.x))
+    rows = np.flatnonzero(stacks.joins & (least <= extension) & (extension <= least + case.x + stacks.travel))
     best = rows[np.argsort(stacks.rings[rows], kind="stable")]
     return tuple(" + ".join(stacks.ids[row]) or "none" for row in best[:MOST])

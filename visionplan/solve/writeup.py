@@ -61,6 +61,8 @@ def _case(judge: Judge, chosen: Chosen) -> Case:
         h=column(block.case.h[row, 0] for block, row, _ in rows),
         N=column(block.case.N[row, stop] for block, row, stop in rows),
         rings=column(block.case.rings[row, 0] for block, row, _ in rows),
+        t=column(block.case.t[row, 0] for block, row, _ in rows),
+        joined=column(block.case.joined[row, 0] for block, row, _ in rows),
         ring_price=column(block.case.ring_price[row, 0] for block, row, _ in rows),
     )
 
@@ -169,8 +171,8 @@ def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast
 
 
 def _spacers(block, row: int) -> tuple[str, ...]:
-    lens = block.lenses[row : row + 1]
-    for _, stacks in block.case.problem.stacks_by_thread(lens, block.arrangement.cameras):
+    pair = block.cameras[row : row + 1], block.lenses[row : row + 1]
+    for _, stacks in block.case.problem.stacks_between(*pair, block.arrangement.cameras):
         return stacks.ids[block.stack[row]]
     return ()
 

@@ -1,6 +1,7 @@
 """Read one file of a catalogue: its bytes in, a `Table` out, column by column."""
 
 from collections.abc import Iterable
+from dataclasses import replace
 from itertools import chain
 from typing import Any
 
@@ -62,10 +63,8 @@ def _read_body(chunks: Iterable[Chunk], heading: Heading, item: str, ledger: Led
     check_ids(values["id"], begins, heading, ledger)
     if item == "lenses":
         check_lenses(values, begins, heading, ledger)
-    if ledger.bad:
-        values, begins = _without(ledger.bad, values, begins)
     index = dict(zip(values["id"], range(len(begins))))
-    return Table(item, values, begins, ledger.file, tuple(notes), heading.currency, index)
+    return without(ledger.bad, Table(item, values, begins, ledger.file, tuple(notes), heading.currency, index))
 
 
 def _well_formed(chunk: Chunk, heading: Heading, ledger: Ledger) -> Chunk:
@@ -85,10 +84,14 @@ def _unstated(column: Column, count: int) -> np.ndarray | list:
     return [() if column.kind == "stops" else ""] * count
 
 
-def _without(bad: set[int], values: dict[str, Any], begins: list[int]) -> tuple[dict[str, Any], list[int]]:
-    good = [row for row, line in enumerate(begins) if line not in bad]
+def without(bad: set[int], table: Table) -> Table:
+    """Leave out the rows that begin at these lines."""
+    good = [row for row, line in enumerate(table.lines) if line not in bad] if bad else range(len(table))
+    if len(good) == len(table):
+        return table
     kept = {
         name: column[good] if isinstance(column, np.ndarray) else [column[row] for row in good]
-        for name, column in values.items()
+        for name, column in table.values.items()
     }
-    return kept, [begins[row] for row in good]
+    index = dict(zip(kept["id"], range(len(good))))
+    return replace(table, values=kept, lines=[table.lines[row] for row in good], index=index)

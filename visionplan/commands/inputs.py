@@ -18,8 +18,9 @@ def add_inputs(parser: argparse.ArgumentParser) -> None:
     parser.add_argument(
         "--catalogue",
         metavar="DIR",
-        help="folder with lenses.csv, cameras.csv and perhaps spacers.csv; the brief's own folder, or the one above "
-        "it, where that holds them",
+        action="append",
+        help="folder with lenses.csv, cameras.csv and perhaps spacers.csv, several if given again; the brief's own "
+        "folder, or the one above it, where that holds them",
     )
     parser.add_argument("--skip-bad", action="store_true", help="leave out rows of the catalogue that are at fault")
     parser.add_argument("--units", choices=("mm", "inch"), help="what to show lengths in; the brief's own if not said")
@@ -47,7 +48,7 @@ def read_inputs(args: argparse.Namespace) -> tuple["Brief", "Catalogue"]:
     from dataclasses import replace
 
     from visionplan.brief.read import read_brief
-    from visionplan.catalogue.folder import read_catalogue
+    from visionplan.catalogue.folder import read_catalogues
     from visionplan.commands.console import complain
 
     brief = catalogue = None
@@ -59,7 +60,7 @@ def read_inputs(args: argparse.Namespace) -> tuple["Brief", "Catalogue"]:
         if args.brief != "-" and not os.path.isfile(args.brief):
             raise
     try:
-        catalogue = read_catalogue(args.catalogue or _nearby(args.brief), args.skip_bad)
+        catalogue = read_catalogues(args.catalogue or [_nearby(args.brief)], args.skip_bad)
     except InputError as error:
         faults += error.faults
     if brief is None or catalogue is None:

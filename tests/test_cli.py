@@ -1,6 +1,7 @@
 """The program as the system sees it: exit status, Ctrl-C, pipes, full disks, terminals without Unicode."""
 
 import os
+import shlex
 import signal
 import subprocess
 import sys
@@ -184,6 +185,26 @@ def test_a_terminal_without_unicode(tmp_path, encoding):
     status, out, _ = ended(start("explain", str(brief), *PAIR, "--catalogue", DEMO, env=env))
     assert status == 0
     assert "Deckel Gr" in out.decode(encoding)
+
+
+@posix
+def test_a_terminal_has_colour_unless_it_is_not_wanted():
+    import pexpect
+
+    def seen(**env):
+        arguments = ["-m", "visionplan", "rank", JAR_LIDS]
+        settings = ANY_TERMINAL | {"TERM": "xterm"} | env
+        out, status = pexpect.run(
+            shlex.join([sys.executable, *arguments]), env=settings, dimensions=(24, 100), withexitstatus=True
+        )
+        assert status == 0
+        return out.decode()
+
+    assert "\x1b[" in seen()
+    plain = seen(NO_COLOR="1")
+    assert "\x1b" not in plain
+    assert 80 < max(map(len, plain.splitlines())) <= 100
+    assert "\x1b" not in seen(TERM="dumb")
 
 
 def test_files_for_programs_are_utf_8_in_every_locale(tmp_path):

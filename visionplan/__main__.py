@@ -1,15 +1,19 @@
 """The way in: Ctrl-C is seen to before anything else is imported."""
 
 import os
-import signal
 import sys
 
 
 def main() -> int:
     """Run the command that the arguments name; its exit status."""
-    # An exception would not do: numpy, for one, turns a KeyboardInterrupt during its import into an ImportError.
-    if signal.getsignal(signal.SIGINT) is signal.default_int_handler:
-        signal.signal(signal.SIGINT, lambda *_: os._exit(130))
+    try:
+        import signal
+
+        # An exception would not do: numpy, for one, turns a KeyboardInterrupt during its import into an ImportError.
+        if signal.getsignal(signal.SIGINT) is signal.default_int_handler:
+            signal.signal(signal.SIGINT, lambda *_: os._exit(130))
+    except KeyboardInterrupt:
+        os._exit(130)
     from visionplan.cli import run
 
     return run(sys.argv[1:])

@@ -14,18 +14,26 @@ COMMANDS = (rank, explain, sheet, asbuilt, concede, catalogue, new, completion)
 
 _STATUS = """\
 exit status:
-  0    something fits; the rig explained fits; done
-  1    nothing fits; the rig explained does not fit
+  0    something fits; the rig that is named fits; done
+  1    nothing fits; the rig that is named does not fit
   2    bad input or usage
   130  Ctrl-C
 """
+
+
+class Formatter(argparse.RawDescriptionHelpFormatter):
+    """Leaves a text of several lines as it is, and wraps one of a single line."""
+
+    def _fill_text(self, text: str, width: int, indent: str) -> str:
+        fill = super()._fill_text if "\n" in text else super(argparse.RawDescriptionHelpFormatter, self)._fill_text
+        return fill(text, width, indent)
 
 
 class Parser(argparse.ArgumentParser):
     """Takes no abbreviations, which a later option could break, and shows arguments safely."""
 
     def __init__(self, **settings):
-        super().__init__(allow_abbrev=False, **settings)
+        super().__init__(allow_abbrev=False, formatter_class=Formatter, **settings)
 
     def error(self, message: str) -> NoReturn:
         """Complain of bad usage."""
@@ -38,7 +46,6 @@ def parser() -> argparse.ArgumentParser:
         prog="visionplan",
         description="Find the camera, lens and spacer rings that meet everything a cell asks for.",
         epilog=_STATUS,
-        formatter_class=lambda prog: argparse.RawDescriptionHelpFormatter(prog, max_help_position=28),
     )
     top.add_argument("--version", action="version", version=f"visionplan {__version__}")
     commands = top.add_subparsers(title="commands", metavar="COMMAND")

@@ -14,7 +14,6 @@ def add(commands) -> None:
         epilog='bash: eval "$(visionplan completion bash)" in ~/.bashrc\n'
         "zsh:  visionplan completion zsh > DIR/_visionplan, with a DIR of $fpath\n"
         "fish: visionplan completion fish > ~/.config/fish/completions/visionplan.fish",
-        formatter_class=argparse.RawDescriptionHelpFormatter,
     )
     parser.add_argument("shell", metavar="SHELL", choices=_SHELLS, help=f"one of {', '.join(_SHELLS)}")
     parser.set_defaults(run=run)

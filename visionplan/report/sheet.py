@@ -3,7 +3,9 @@
 import math
 from collections.abc import Iterator, Sequence
 
+from visionplan.catalogue.items import Table
 from visionplan.optics.depth import classic_limits
+from visionplan.optics.mounts import thread
 from visionplan.report.between import layers, mirror
 from visionplan.report.cautions import cautions
 from visionplan.report.elevation import elevation
@@ -82,11 +84,33 @@ def _steps(rig: Rig, system: str) -> Iterator[str]:
         yield f"{name}, its row along the field's {side}, square across the motion."
     else:
         yield f"{name}, {_orientation(rig)}"
-    for ring in rig.spacers:
-        length = catalogue.spacers["length"][catalogue.spacers["id"].index(ring)]
-        yield f"Spacer ring {ring}, {show(float(length), 'mm', system)}, on the camera's thread; no other ring."
-    stack = "on the ring" if rig.spacers else "on the camera, no spacer ring"
+    for row in _stacked(rig):
+        yield _ring(catalogue.spacers, row, system)
+    stack = "on the rings above, no other" if rig.spacers else "on the camera, no spacer ring"
     yield f"Lens {rig.lens} ({lens['mount'][case.lenses]} mount) {stack}, screwed home."
+
+
+def _stacked(rig: Rig) -> list[int]:
+    """Rows of the rig's rings from the camera on: those of its thread, an adapter, those of the lens's thread."""
+    catalogue = rig.case.problem.catalogue
+    spacers, of_camera = catalogue.spacers, thread(catalogue.cameras["mount"][rig.case.cameras])
+
+    def place(row: int) -> int:
+        lens_side, camera_side = spacers["mount"][row], spacers["camera mount"][row] or spacers["mount"][row]
+        return 1 if thread(lens_side) != thread(camera_side) else 0 if thread(lens_side) == of_camera else 2
+
+    return sorted((spacers["id"].index(ring) for ring in rig.spacers), key=place)
+
+
+def _ring(spacers: Table, row: int, system: str) -> str:
+    length, travel = (float(spacers[name][row]) for name in ("length", "travel"))
+    camera_side, lens_side = spacers["camera mount"][row], spacers["mount"][row]
+    adapts = camera_side and thread(camera_side) != thread(lens_side)
+    name = (
+        f"Adapter {spacers['id'][row]}, {camera_side} to {lens_side}" if adapts else f"Spacer ring {spacers['id'][row]}"
+    )
+    turns = "" if math.isnan(travel) else f", a helicoid that lengthens by up to {show(travel, 'mm', system)}"
+    return f"{name}, {show(length, 'mm', system)}{turns}."
 
 
 def _orientation(rig: Rig) -> str:
@@ -127,7 +151,11 @@ def _settings(rig: Rig, system: str) -> Iterator[Row]:
         yield "focus ring", f"extension {length(case.f * m)}; its travel is not known"
     else:
         out = case.f * m - case.e
-        yield "focus ring", f"out by {figure(out, 3)} of {length(case.x)} from its infinity stop; lock it"
+        helicoid = ", the helicoid's travel counted" if case.t else ""
+        yield (
+            "focus ring",
+            f"out by {figure(out, 3)} of {length(case.x + case.t)} from its infinity stop{helicoid}; lock it",
+        )
     yield "exposure", _exposure(rig)
     yield "light", _light(rig)
     if case.line and case.v:

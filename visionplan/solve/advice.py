@@ -104,16 +104,18 @@ def _best_ring(kind: str, rig: Rig, judged: list[tuple[str, Rig]]) -> Advice | N
 
 
 def _spare_rings(rig: Rig) -> list[str]:
-    """One ring of each length that could still be put on."""
+    """One ring of each length and travel that could still be put on; no adapter."""
     catalogue = rig.case.problem.catalogue
     spacers: Table = catalogue.spacers
-    of_thread = thread(catalogue.lenses["mount"][rig.case.lenses])
+    threads = {thread(catalogue.lenses["mount"][rig.case.lenses]), thread(catalogue.cameras["mount"][rig.case.cameras])}
     cameras = rig.grid[0] * rig.grid[1]
-    found: dict[float, str] = {}
+    found: dict[tuple[float, float], str] = {}
     for row, id in enumerate(spacers["id"]):
         enough = not spacers["quantity"][row] < cameras * (rig.spacers.count(id) + 1)
-        if thread(spacers["mount"][row]) == of_thread and enough:
-            found.setdefault(float(spacers["length"][row]), id)
+        plain = spacers["camera mount"][row] in ("", spacers["mount"][row])
+        if plain and thread(spacers["mount"][row]) in threads and enough:
+            travel = float(np.nan_to_num(spacers["travel"][row]))
+            found.setdefault((float(spacers["length"][row]), travel), id)
     return list(found.values())
 
 

@@ -5,7 +5,7 @@ import numpy as np
 from visionplan.optics.conjugates import magnification_at
 from visionplan.solve.case import Case
 from visionplan.solve.rig import Rig
-from visionplan.solve.settings import stacks_of
+from visionplan.solve.stacks import stacks_between
 from visionplan.solve.target import Measured
 
 MOST = 3
@@ -38,7 +38,11 @@ def lenses_like(case: Case, m: Measured, distance: tuple[float, float]) -> tuple
 
 def stacks_reaching(rig: Rig, extension: float) -> tuple[str, ...]:
     """Spacer stacks with which the rig's focus ring reaches an image-side extension, fewest rings first."""
-    case, stacks = rig.case, stacks_of(rig)
+    case, problem = rig.case, rig.case.problem
+    cameras, lenses, names = problem.thread
+    threads = names[cameras[case.cameras]], names[lenses[case.lenses]]
+    # Not the problem's own stacks: where the rig's rings are given it knows no others.
+    stacks = stacks_between(problem.catalogue.spacers, *threads, rig.grid[0] * rig.grid[1])
     least = case.d + stacks.length
     rows = np.flatnonzero(stacks.joins & (least <= extension) & (extension <= least + case.x + stacks.travel))
     best = rows[np.argsort(stacks.rings[rows], kind="stable")]

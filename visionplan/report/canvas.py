@@ -4,6 +4,7 @@ from itertools import groupby
 
 Segment = tuple[str, str]
 """Text of one role, and the role."""
+_BLANK = (" ", "")
 
 
 class Canvas:
@@ -12,7 +13,7 @@ class Canvas:
     def __init__(self, width: int, height: int):
         self.width = width
         self.height = height
-        self._cells = [[(" ", "")] * width for _ in range(height)]
+        self._cells = [[_BLANK] * width for _ in range(height)]
 
     def put(self, row: int, column: int, text: str, role: str = "") -> None:
         """Write characters of one cell each."""
@@ -22,14 +23,17 @@ class Canvas:
 
     def blank(self, row: int, start: int, end: int) -> bool:
         """Whether nothing stands in the cells from start up to, not including, end, and all of them are there."""
-        return start >= 0 and end <= self.width and all(cell[0] == " " for cell in self._cells[row][start:end])
+        return start >= 0 and end <= self.width and all(cell == _BLANK for cell in self._cells[row][start:end])
+
+    def end(self, row: int) -> int:
+        """The first cell behind everything in a row."""
+        return len("".join(character for character, _ in self._cells[row]).rstrip())
 
     def segments(self) -> list[list[Segment]]:
         """The rows as segments; spaces at their ends left out."""
         rows = []
-        for cells in self._cells:
-            kept = len("".join(character for character, _ in cells).rstrip())
-            groups = groupby(cells[:kept], key=lambda cell: cell[1])
+        for row, cells in enumerate(self._cells):
+            groups = groupby(cells[: self.end(row)], key=lambda cell: cell[1])
             rows.append([("".join(character for character, _ in group), role) for role, group in groups])
         return rows
 

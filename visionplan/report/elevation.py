@@ -143,7 +143,8 @@ class _Drawing:
         for start, end in profile.layers:
             self.box("layer", self.column(start), self.column(end), profile.high)
         if profile.limit is not None:
-            self.box("limit", self.column(profile.limit), self.column(profile.limit) + 1, profile.high)
+            for row in range(2 * self.middle + 1):
+                self.put(row, self.column(profile.limit), "limit")
         self.cone()
         self.body()
         above, plane, below = (self.column(station) for station in (profile.top, 0.0, profile.bottom))

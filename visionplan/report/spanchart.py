@@ -83,19 +83,18 @@ def _axis(rig: Rig, cells: int) -> Axis | None:
     """Over the span, the working point, what pinches and what is missed, and the bounds that lie near these."""
     every = [bound for verdict in rig.demands for bound in (verdict.lo, verdict.hi) if bound]
     core = [*(rig.span or ()), *([rig.magnification] if rig.magnification else [])] or every
-    for verdict in rig.demands:
-        if verdict.verdict == "missed" or verdict.name in (rig.pinch or ()):
-            core += [bound for bound in _facing(verdict, rig) if bound]
+    core += [bound for verdict in rig.demands for bound in _facing(verdict, rig) if bound]
     near = [bound for bound in every if min(core) / _NEAR <= bound <= max(core) * _NEAR]
     return axis_over([*core, *near], cells, _MARGIN) if core else None
 
 
 def _facing(verdict: Verdict, rig: Rig) -> tuple[float | None, ...]:
-    """The bounds of a demand that pinches or is missed which the chart must hold."""
-    if verdict.verdict == "missed":
-        return verdict.lo, verdict.hi
+    """The bounds of a demand that the chart must hold: those that pinch and those that are missed."""
     low, high = rig.pinch or ("", "")
-    return verdict.lo if verdict.name == low else None, verdict.hi if verdict.name == high else None
+    m = rig.magnification
+    lo = verdict.name == low or (verdict.lo is not None and m is not None and m < verdict.lo)
+    hi = verdict.name == high or (verdict.hi is not None and m is not None and m > verdict.hi)
+    return verdict.lo if lo else None, verdict.hi if hi else None
 
 
 class _Chart:
@@ -155,18 +154,21 @@ class _Chart:
         start = -1 if verdict.lo is None else axis.place(verdict.lo)
         end = self.cells if verdict.hi is None else axis.place(verdict.hi)
         self.draw(row, start, end, self.signs.pinch if pinches else self.signs.bar, role)
-        if verdict.lo is not None:
-            self.value(row, verdict.lo, start, True, self.notes(verdict, verdict.lo, True))
-        if verdict.hi is not None:
-            self.value(row, verdict.hi, end, False, self.notes(verdict, verdict.hi, False))
+        untold: list[tuple[bool, tuple[str, ...]]] = []
+        for bound, place, low in ((verdict.lo, start, True), (verdict.hi, end, False)):
+            notes = () if bound is None else self.notes(verdict, bound, low)
+            if bound is not None and not self.value(row, bound, place, low, notes) and notes:
+                untold.append((low, notes))
+        for low, notes in untold:
+            self.within(row, max(start, 0), min(end, self.cells - 1), low, notes)
 
     def notes(self, verdict: Verdict, bound: float, low: bool) -> tuple[str, ...]:
         """What may be said of a bound that is missed, the longest first."""
         m = self.rig.magnification
         if verdict.verdict != "missed" or m is None or (m >= bound if low else m <= bound):
-            return ("",)
+            return ()
         by = missed_by(verdict, self.system)
-        return (f"misses by {by}", f"by {by}", "") if by else ("",)
+        return (f"misses by {by}", f"by {by}") if by else ()
 
     def state(self, verdict: Verdict) -> str:
         """A word on a demand: missed, pinch, holds."""
@@ -186,21 +188,33 @@ class _Chart:
         if 0 <= end < self.cells:
             self.put(row, end, right, role)
 
-    def value(self, row: int, bound: float, place: int, low: bool, notes: tuple[str, ...]) -> None:
-        """A bound's value outside its end of the bar, or inside where there is no room; with a note where one fits."""
+    def value(self, row: int, bound: float, place: int, low: bool, notes: tuple[str, ...]) -> bool:
+        """A bound's value outside its end of the bar, or inside where there is no room; whether a note stands by it."""
         value = figure(bound, 3)
         if not 0 <= place < self.cells:
             arrow = self.signs.beyond[place >= 0]
             text = f"{arrow} {value} " if place < 0 else f" {value} {arrow}"
             self.put(row, 0 if place < 0 else self.cells - len(text), text, "value")
-            return
-        for note in notes:
+            return False
+        for note in (*notes, ""):
             text = " ".join(filter(None, (note, value) if low else (value, note)))
             for start in self.outside(place, len(text), low):
                 if self.blank(row, start, start + len(text)):
-                    self.put(row, start, text, "missed" if notes[0].startswith("misses") else "value")
-                    return
+                    self.put(row, start, text, "missed" if notes else "value")
+                    return bool(note)
         self.put(row, place + 2 if low else place - 1 - len(value), value, "value")
+        return False
+
+    def within(self, row: int, start: int, end: int, low: bool, notes: tuple[str, ...]) -> None:
+        """A note in the bar itself, beside its missed end, or else behind all that stands in the row."""
+        behind = self.canvas.end(row) - self.names + 1
+        for note in notes:
+            if end - start > len(note) + 2:
+                self.put(row, start + 1 if low else end - 2 - len(note), f" {note} ", "missed")
+                return
+            if behind + len(note) <= self.cells:
+                self.put(row, behind, note, "missed")
+                return
 
     def outside(self, place: int, length: int, low: bool) -> list[int]:
         """Where a text may begin outside the end of a bar: beyond the working point where that would cross it."""

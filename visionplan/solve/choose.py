@@ -9,8 +9,9 @@ import numpy as np
 from visionplan.solve import checks, span
 from visionplan.solve.demands import MET, MISSED, UNKNOWN
 from visionplan.solve.gates import asked_gates, judge_gate, price
-from visionplan.solve.judge import Judge, Rigs
+from visionplan.solve.judge import Judge
 from visionplan.solve.problem import Problem
+from visionplan.solve.rigs import Rigs
 
 
 @dataclass(frozen=True)

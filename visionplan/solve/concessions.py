@@ -14,12 +14,14 @@ from visionplan.catalogue.items import Catalogue
 from visionplan.solve import screen, span
 from visionplan.solve.choose import Items
 from visionplan.solve.classes import Classes, classes_of
-from visionplan.solve.demands import MISSED, Demand, Give
+from visionplan.solve.demands import MISSED, Demand
 from visionplan.solve.figures import contrasts
 from visionplan.solve.gates import ASKED, Gate
-from visionplan.solve.judge import Judge, Rigs
+from visionplan.solve.gives import Give
+from visionplan.solve.judge import Judge
 from visionplan.solve.problem import Problem
 from visionplan.solve.rig import Concession
+from visionplan.solve.rigs import Rigs
 from visionplan.solve.survey import survey
 
 

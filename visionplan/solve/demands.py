@@ -9,28 +9,14 @@ from typing import Any
 
 import numpy as np
 
-from visionplan.optics.light import signal_to_noise
-from visionplan.solve import bounds, checks
+from visionplan.solve import bounds, checks, gives
 from visionplan.solve.ask import Ask
 from visionplan.solve.case import Case
+from visionplan.solve.gives import Give
 
 NOT_ASKED, MET, UNKNOWN, MISSED = -1, 0, 1, 2
 """Codes of a verdict, worse ones greater."""
 VERDICTS = {NOT_ASKED: "not asked", MET: "met", UNKNOWN: "unknown", MISSED: "missed"}
-
-
-@dataclass(frozen=True)
-class Give:
-    """What a demand must give way for a rig to fit, where the other demands leave it an interval: arrays over rigs."""
-
-    asked: Any
-    needed: Any
-    at: Any
-    """The magnification at which the demand then just holds."""
-    loosens: int
-    """Whether a greater (1) or a smaller (−1) value asks for less."""
-    end: str | None = None
-    """The end of a range that is meant: nearer or farther."""
 
 
 Concede = Callable[[Case, Any, Any], list[Give]]
@@ -71,59 +57,6 @@ class Demand:
     """Unit of the concession, where it isn't the demand's."""
 
 
-def _concede_cover(case: Case, lo, hi):
-    return [Give(1.0, checks.cover(case, lo), lo, -1)]
-
-
-def _concede_sampling(case: Case, lo, hi):
-    return [Give(case.q, checks.sampling(case, hi), hi, 1)]
-
-
-def _concede_reach(case: Case, lo, hi):
-    near, far = case.brief.working_distance
-    least = max(case.brief.above, sum(layer.thickness for layer in case.brief.layers))
-    nearer = case.WD(lo)
-    return [
-        Give(near, np.where(nearer > least, nearer, np.nan), lo, -1, "nearer"),
-        Give(far, case.WD(hi), hi, 1, "farther"),
-    ]
-
-
-def _concede_headroom(case: Case, lo, hi):
-    shortest = np.clip(1.0, lo, hi)
-    return [Give(case.brief.headroom, checks.headroom(case, shortest), shortest, 1)]
-
-
-def _concede_near_depth(case: Case, lo, hi):
-    return [Give(case.A + case.g, checks.near_depth(case, lo), lo, -1)]
-
-
-def _concede_far_depth(case: Case, lo, hi):
-    return [Give(case.B + case.g, checks.far_depth(case, lo), lo, -1)]
-
-
-def _concede_rayleigh(case: Case, lo, hi):
-    return [Give(case.feature, checks.rayleigh(case, hi), hi, 1)]
-
-
-def _concede_lens_detail(case: Case, lo, hi):
-    return [Give(case.feature, 1 / (2 * case.detail * hi), hi, 1)]
-
-
-def _concede_light(case: Case, lo, hi):
-    if case.ask.irradiance is None:
-        return [Give(case.brief.snr, signal_to_noise(case.saturation, case.variance), lo, -1)]
-    return [Give(case.brief.snr, checks.light(case, lo), lo, -1)]
-
-
-def _concede_perspective(case: Case, lo, hi):
-    return [Give(case.brief.max_perspective, checks.perspective(case, lo), lo, 1)]
-
-
-def _concede_speed(case: Case, lo, hi):
-    return [Give(case.v, bounds.fastest_rows(case) * case.P / lo, lo, -1)]
-
-
 def _lacks_light(case: Case):
     """Quantum efficiency, or a capacity where nothing else limits the exposure; not where no light would do."""
     unlimited = (case.ask.irradiance is not None) & np.isinf(case.ask.longest_exposure) & ~(case.line & (case.v > 0))
@@ -143,7 +76,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("W", "H", "w", "h", "A", "f", "p"),
         "perspective projection through the entrance pupil",
         ("scene.field",),
-        concede=_concede_cover,
+        concede=gives.cover,
     ),
     Demand(
         "sampling",
@@ -157,7 +90,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("q", "kappa", "P", "B", "f", "p"),
         "perspective projection through the entrance pupil; pixels a feature by common practice",
         ("scene.feature",),
-        concede=_concede_sampling,
+        concede=gives.sampling,
     ),
     Demand(
         "reach",
@@ -173,7 +106,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("station.working_distance",),
         place=True,
         of="lens",
-        concede=_concede_reach,
+        concede=gives.reach,
     ),
     Demand(
         "headroom",
@@ -191,7 +124,7 @@ DEMANDS: tuple[Demand, ...] = (
         lacks=lambda case: (
             np.isnan(case.lens_length) | np.isnan(case.camera_length) | (~case.telecentric & np.isnan(case.d))
         ),
-        concede=_concede_headroom,
+        concede=gives.headroom,
     ),
     Demand(
         "travel",
@@ -221,7 +154,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("scene.above", "scene.below"),
         of="lens",
         applies=lambda case: case.A + case.g > 0,
-        concede=_concede_near_depth,
+        concede=gives.near_depth,
     ),
     Demand(
         "far depth",
@@ -237,7 +170,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("scene.above", "scene.below"),
         of="lens",
         applies=lambda case: case.B + case.g > 0,
-        concede=_concede_far_depth,
+        concede=gives.far_depth,
     ),
     Demand(
         "rayleigh",
@@ -252,7 +185,7 @@ DEMANDS: tuple[Demand, ...] = (
         "Rayleigh criterion",
         ("scene.feature",),
         of="lens",
-        concede=_concede_rayleigh,
+        concede=gives.rayleigh,
     ),
     Demand(
         "lens detail",
@@ -268,7 +201,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("scene.feature",),
         of="lens",
         lacks=lambda case: np.isnan(case.detail),
-        concede=_concede_lens_detail,
+        concede=gives.lens_detail,
         concede_unit="mm",
     ),
     Demand(
@@ -285,7 +218,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("light.snr",),
         of="rig",
         lacks=_lacks_light,
-        concede=_concede_light,
+        concede=gives.light,
     ),
     Demand(
         "perspective",
@@ -300,7 +233,7 @@ DEMANDS: tuple[Demand, ...] = (
         "perspective projection through the entrance pupil",
         ("scene.max_perspective", "scene.above", "scene.below"),
         lacks=lambda case: case.telecentric & np.isnan(case.telecentricity) & (case.A + case.B > 0),
-        concede=_concede_perspective,
+        concede=gives.perspective,
     ),
     Demand(
         "line rate",
@@ -316,7 +249,7 @@ DEMANDS: tuple[Demand, ...] = (
         ("motion.speed",),
         applies=lambda case: case.line,
         lacks=lambda case: np.isnan(case.line_rate),
-        concede=_concede_speed,
+        concede=gives.speed,
         concede_unit="mm/s",
     ),
 )

@@ -5,162 +5,19 @@ spacer stacks that can matter, and leaves each rig's spans, gates and unknowns a
 alone is worked out once for each lens and stop and gathered from there.
 """
 
-from collections.abc import Callable
 from dataclasses import dataclass, replace
-from functools import cached_property
 
 import numpy as np
 
 from visionplan.solve import span
 from visionplan.solve.ask import Arrangement
 from visionplan.solve.case import Case, case_of
-from visionplan.solve.demands import BY_NAME, MET, MISSED, UNKNOWN, Demand, asked_demands, judge
-from visionplan.solve.figures import contrasts
-from visionplan.solve.gates import GATES, asked_gates, judge_gate
+from visionplan.solve.demands import BY_NAME, MET, UNKNOWN, asked_demands
+from visionplan.solve.gates import asked_gates, judge_gate
 from visionplan.solve.problem import Problem
+from visionplan.solve.rigs import CONTRAST, Bounds, Rigs, rows_of
 
 _TRAVEL, _HEADROOM = BY_NAME["travel"], BY_NAME["headroom"]
-_CONTRAST = next(gate for gate in GATES if gate.name == "contrast")
-
-
-@dataclass(frozen=True)
-class Bounds:
-    """Intersections of demands: picture and place apart."""
-
-    lo_p: np.ndarray | float = 0.0
-    hi_p: np.ndarray | float = np.inf
-    lo_place: np.ndarray | float = 0.0
-    hi_place: np.ndarray | float = np.inf
-    unknown: np.ndarray | bool = False
-    """Whether some demand is unknown."""
-
-    def add(self, demand: Demand, case: Case) -> "Bounds":
-        """These and one demand more."""
-        lo, hi, code = judge(demand, case)
-        unknown = self.unknown | (code == UNKNOWN).any(axis=-1, keepdims=True)
-        if demand.place:
-            lo, hi = np.maximum(self.lo_place, lo), np.minimum(self.hi_place, hi)
-            return replace(self, lo_place=lo, hi_place=hi, unknown=unknown)
-        lo, hi = np.maximum(self.lo_p, lo), np.minimum(self.hi_p, hi)
-        return replace(self, lo_p=lo, hi_p=hi, unknown=unknown)
-
-    def both(self, other: "Bounds") -> "Bounds":
-        """These and others."""
-        return Bounds(
-            np.maximum(self.lo_p, other.lo_p),
-            np.minimum(self.hi_p, other.hi_p),
-            np.maximum(self.lo_place, other.lo_place),
-            np.minimum(self.hi_place, other.hi_place),
-            self.unknown | other.unknown,
-        )
-
-    def take(self, rows: np.ndarray) -> "Bounds":
-        """Of some rows."""
-        return Bounds(*(_rows(getattr(self, name), rows) for name in self.__dataclass_fields__))
-
-    @property
-    def lo(self):
-        """Of all demands."""
-        return np.maximum(self.lo_p, self.lo_place)
-
-    @property
-    def hi(self):
-        """Of all demands."""
-        return np.minimum(self.hi_p, self.hi_place)
-
-
-@dataclass(frozen=True)
-class Rigs:
-    """Rigs in one arrangement, each with every stop of its lens: arrays of shape (rigs,) and (rigs, stops)."""
-
-    arrangement: Arrangement
-    case: Case
-    intersect: Callable[[], Bounds]
-    """Works out `bounds`: where it is enough to know that a rig fits, nobody asks."""
-    ends: Bounds | None
-    """Where every rig is known to fit its span: bounds over all its stops, so wider than those of any."""
-    stack: np.ndarray
-    """Row of the spacer stack within the stacks of the lens's thread."""
-    gates: np.ndarray
-    """Worst code of the gates of a pair, but for the contrast."""
-    unknown: np.ndarray
-    """Whether a demand or a gate of the pair is unknown, of each rig."""
-    source: np.ndarray
-    """Which of the pairs asked for each rig belongs to."""
-    judges_contrast: bool
-
-    @property
-    def cameras(self) -> np.ndarray:
-        """Row of each rig's camera."""
-        return self.case.cameras
-
-    @property
-    def lenses(self) -> np.ndarray:
-        """Row of each rig's lens."""
-        return self.case.lenses
-
-    @cached_property
-    def bounds(self) -> Bounds:
-        """Intersections of the demands: shape (rigs, stops)."""
-        return self.intersect()
-
-    @cached_property
-    def fit(self) -> np.ndarray:
-        """Whether a rig fits at some stop, gates of the pair included."""
-        return np.asarray(self.fits.any(axis=1) if self.ends is None else self.gates < MISSED)
-
-    @cached_property
-    def best_grade(self) -> np.ndarray:
-        """Grade of each rig at its best stop, or a better one where that isn't worked out."""
-        if self.ends is None:
-            return self.grade.min(axis=1)
-        with np.errstate(divide="ignore"):
-            return np.asarray(span.grade(self.ends.hi_p / self.ends.lo_p - 1, self.case.brief.comfort))[:, 0]
-
-    @cached_property
-    def fits_span(self) -> np.ndarray:
-        """Whether the span holds a magnification, per stop."""
-        return span.fits(self.bounds.lo, self.bounds.hi, self.case.M) & np.isfinite(self.case.N)
-
-    @cached_property
-    def point(self) -> np.ndarray:
-        """Working point of each stop; NaN where no magnification meets some demand, unless the rig stands already."""
-        b, case = self.bounds, self.case
-        M = np.where(case.telecentric & (b.hi == 0), np.nan, case.M)
-        return span.working_point(b.lo_p, b.hi_p, b.lo, b.hi, M)
-
-    @cached_property
-    def room(self) -> np.ndarray:
-        """Latitude of each stop, where it fits."""
-        return np.where(self.fits_span, span.latitude(self.point, self.bounds.lo_p, self.bounds.hi_p), 0.0)
-
-    @cached_property
-    def short(self) -> np.ndarray:
-        """Shortfall of each stop; infinite where the lens has no such stop."""
-        short = span.shortfall(self.bounds.lo, self.bounds.hi, self.case.M)
-        return np.where(np.isfinite(self.case.N), short, np.inf)
-
-    def contrast(self, rows: np.ndarray, stops: np.ndarray) -> np.ndarray:
-        """Code of the contrast gate at some rigs' stops; MET where it isn't asked."""
-        if not self.judges_contrast:
-            return np.full(len(rows), MET)
-        some, point = self.case.pick(self.arrangement, rows, stops), self.point[rows, stops][:, None]
-        some.least_contrast = np.minimum.reduce(contrasts(some, point))
-        return np.where(np.isfinite(point), judge_gate(_CONTRAST, some), MISSED)[:, 0]
-
-    @cached_property
-    def fits(self) -> np.ndarray:
-        """Whether a stop fits, gates of the pair included; gates of camera or lens alone are not."""
-        fits = self.fits_span & (self.gates < MISSED)[:, None]
-        if self.judges_contrast:
-            rows, stops = np.nonzero(fits)
-            fits[rows, stops] = self.contrast(rows, stops) < MISSED
-        return fits
-
-    @cached_property
-    def grade(self) -> np.ndarray:
-        """Grade of each stop, as an index into GRADES; one past the last where it doesn't fit."""
-        return np.where(self.fits, span.grade(self.room, self.case.brief.comfort), len(span.GRADES))
 
 
 @dataclass(frozen=True)
@@ -197,7 +54,6 @@ class Judge:
 
     def __init__(self, problem: Problem, drop: frozenset[str] = frozenset()):
         self.problem = problem
-        self.drop = drop
         self.demands = asked_demands(problem.ask, drop)
         self.gates = asked_gates(problem.ask, drop)
         self._lenses: dict[float, OfLens] = {}
@@ -231,9 +87,9 @@ class Judge:
             source = self._possible(arrangement, lenses, of_pair)
             case, of_pair = self._bare(arrangement, cameras[source], lenses[source]), of_pair.take(source)
         of_lens, none = self.of_lens(arrangement), np.zeros(len(source), int)
-        whole = not self.problem.has_rings and _CONTRAST not in self.gates and all(d.of != "rig" for d in self.demands)
+        whole = not self.problem.has_rings and CONTRAST not in self.gates and all(d.of != "rig" for d in self.demands)
         if whole:  # nothing more can come: what is possible fits
-            unknown = _rows(of_lens.bounds.unknown, case.lenses) | of_pair.unknown
+            unknown = rows_of(of_lens.bounds.unknown, case.lenses) | of_pair.unknown
             ends = None if all_stacks else of_lens.widest.take(case.lenses).both(of_pair)
             intersect = lambda: of_lens.bounds.take(case.lenses).both(of_pair)  # noqa: E731
             return self._rigs(arrangement, case, intersect, ends, unknown, none, source)
@@ -257,7 +113,7 @@ class Judge:
             if gate.of == "pair":
                 codes = _flat(judge_gate(gate, case), len(gates))
                 gates, unknown = np.maximum(gates, codes), unknown | (codes == UNKNOWN)
-        return Rigs(arrangement, case, intersect, ends, stack, gates, unknown, source, _CONTRAST in self.gates)
+        return Rigs(arrangement, case, intersect, ends, stack, gates, unknown, source, CONTRAST in self.gates)
 
     def _bare(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray) -> Case:
         none = np.zeros((len(cameras), 1))
@@ -326,10 +182,6 @@ def _extensions(case: Case, bounds: Bounds, all_stacks: bool):
     low = np.where(stop & ~np.isnan(low), low, np.inf).min(axis=1)
     high = np.where(stop & ~np.isnan(high), high, -np.inf).max(axis=1)
     return low, high
-
-
-def _rows(values, rows):
-    return values[rows] if np.ndim(values) and len(values) > 1 else values
 
 
 def _flat(codes, count: int):

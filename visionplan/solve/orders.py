@@ -8,7 +8,7 @@ import numpy as np
 from visionplan.solve.case import Case
 from visionplan.solve.checks import far_depth, near_depth
 from visionplan.solve.figures import signal_to_noise_at
-from visionplan.solve.judge import Rigs
+from visionplan.solve.rigs import Rigs
 
 
 @dataclass(frozen=True)

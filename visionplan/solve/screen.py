@@ -11,7 +11,8 @@ import numpy as np
 
 from visionplan.solve.ask import Arrangement
 from visionplan.solve.demands import MISSED
-from visionplan.solve.judge import Judge, Rigs
+from visionplan.solve.judge import Judge
+from visionplan.solve.rigs import Rigs
 
 ROOM = 1e-9
 """Relative room of the screen, so that rounding can't lose a rig."""

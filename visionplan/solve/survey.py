@@ -9,9 +9,10 @@ from visionplan.solve import screen, span
 from visionplan.solve.choose import Items
 from visionplan.solve.classes import Classes, classes_of
 from visionplan.solve.demands import MISSED
-from visionplan.solve.judge import Judge, Rigs
+from visionplan.solve.judge import Judge
 from visionplan.solve.orders import ORDERS, Order
 from visionplan.solve.problem import Problem
+from visionplan.solve.rigs import Rigs
 
 _PRICE = frozenset({"price"})
 """Judged camera by camera, not class by class."""

@@ -56,7 +56,7 @@ def draw_case(seed: int, brief: Brief = BRIEF, line: bool = False, telecentric: 
         "detail": log_uniform(draw, 20, 300),
         "d": draw.choice([0.0, 5.0, -5.0], DRAWS),
         "rings": draw.choice([0.0, 0.5, 5.0, 40.0], DRAWS),
-        "t": draw.choice([0.0, 0.0, 7.0], DRAWS),
+        "y": draw.choice([0.0, 0.0, 7.0], DRAWS),
         "x": np.zeros(DRAWS) if telecentric else log_uniform(draw, 0.05, 60),
         "lens_length": draw.uniform(20, 120, DRAWS),
         "camera_length": draw.uniform(20, 120, DRAWS),
@@ -84,7 +84,7 @@ HOLDS = {
         & (checks.reach(case, m) <= case.brief.working_distance[1])
     ),
     "headroom": lambda case, m: checks.headroom(case, m) <= case.brief.headroom,
-    "travel": lambda case, m: (checks.travel(case, m) >= case.e) & (checks.travel(case, m) <= case.e + case.x + case.t),
+    "travel": lambda case, m: (checks.travel(case, m) >= case.e) & (checks.travel(case, m) <= case.e + case.x + case.y),
     "near_depth": lambda case, m: (checks.near_depth(case, m) >= case.A + case.g) & (case.u(m) > case.A + case.g),
     "far_depth": lambda case, m: checks.far_depth(case, m) >= case.B + case.g,
     "rayleigh": lambda case, m: checks.rayleigh(case, m) <= case.feature,
@@ -152,7 +152,7 @@ def test_a_telecentric_lens_fits_its_distance_flange_headroom_and_light_or_does_
     focus = case.WD_stated + case.D + case.z
     expected = {
         "reach": (focus + case.WD_room >= near) & (focus - case.WD_room <= far),
-        "travel": (case.d + case.rings <= 0.01) & (case.d + case.rings + case.t >= -0.01),
+        "travel": (case.d + case.rings <= 0.01) & (case.d + case.rings + case.y >= -0.01),
         "headroom": case.WD(case.M) + case.lens_length + case.rings + case.camera_length + 50 <= case.brief.headroom,
         "light": checks.light(case, case.M) >= case.brief.snr,
     }

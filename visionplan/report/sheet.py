@@ -151,10 +151,10 @@ def _settings(rig: Rig, system: str) -> Iterator[Row]:
         yield "focus ring", f"extension {length(case.f * m)}; its travel is not known"
     else:
         out = case.f * m - case.e
-        helicoid = ", the helicoid's travel counted" if case.t else ""
+        helicoid = ", the helicoid's travel counted" if case.y else ""
         yield (
             "focus ring",
-            f"out by {figure(out, 3)} of {length(case.x + case.t)} from its infinity stop{helicoid}; lock it",
+            f"out by {figure(out, 3)} of {length(case.x + case.y)} from its infinity stop{helicoid}; lock it",
         )
     yield "exposure", _exposure(rig)
     yield "light", _light(rig)

@@ -29,7 +29,7 @@ SIGNS = {
 }
 """Symbol → how the laws write it, where that differs."""
 
-_BOTH = ("d", "rings", "t", "e")
+_BOTH = ("d", "rings", "y", "e")
 _OF_TELECENTRIC = ("M", "WD_stated", "WD_room", "telecentricity")
 _OF_FOCUSING = ("a", "x")
 

@@ -206,7 +206,7 @@ def _causes(
             causes.append(_focal_cause(case, focal))
             causes += _lens_cause(case, m, taped)
     f = case.f if focal is None or _as_stated(case, focal) else focal.value
-    if not isnan(case.e + case.x) and (f * m.high < case.e or f * m.low > case.e + case.x + case.t):
+    if not isnan(case.e + case.x) and (f * m.high < case.e or f * m.low > case.e + case.x + case.y):
         causes.append(Cause("rings", ids=stacks_reaching(planned, f * m.value)))
     return tuple(causes)
 

@@ -62,8 +62,8 @@ def headroom(case: Case):
 def travel(case: Case):
     """Focus ring and spacers reach the extension f m."""
     with np.errstate(invalid="ignore"):
-        straight = (case.e <= STRAIGHT * (1 + EDGE)) & (case.e + case.t >= -STRAIGHT * (1 + EDGE))
-        longest = case.e + case.x + case.t
+        straight = (case.e <= STRAIGHT * (1 + EDGE)) & (case.e + case.y >= -STRAIGHT * (1 + EDGE))
+        longest = case.e + case.x + case.y
         reached = np.where(case.telecentric, straight, longest > 0)
         lo = np.where(case.telecentric, 0.0, np.maximum(case.e / case.f, 0.0))
         hi = np.where(case.telecentric, np.inf, longest / case.f)

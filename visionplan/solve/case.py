@@ -53,7 +53,7 @@ SYMBOLS: dict[str, tuple[str, str]] = {
     "camera_length": ("length of the camera", "mm"),
     "d": ("camera flange distance less that of the lens", "mm"),
     "rings": ("length of the spacer stack", "mm"),
-    "t": ("travel of the helicoids in the spacer stack", "mm"),
+    "y": ("travel of the helicoids in the spacer stack", "mm"),
     "e": ("least extension: flange difference and spacers", "mm"),
 }
 """Symbol → what it is, and its unit."""

@@ -117,7 +117,7 @@ class Judge:
 
     def _bare(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray) -> Case:
         none = np.zeros((len(cameras), 1))
-        return case_of(self.problem, arrangement, cameras, lenses, rings=none, ring_price=none, t=none)
+        return case_of(self.problem, arrangement, cameras, lenses, rings=none, ring_price=none, y=none)
 
     def _possible(self, arrangement: Arrangement, lenses: np.ndarray, of_pair: Bounds) -> np.ndarray:
         """Rows whose pair demands leave something to some stop of the lens."""
@@ -158,7 +158,7 @@ class Judge:
             stack.append(np.arange(count.sum()) - np.repeat(begin - first, count))
         row, chosen = np.concatenate(rows), np.concatenate(stack)
         cameras, lenses = case.cameras[row], case.lenses[row]
-        given = {name: np.zeros((len(row), 1)) for name in ("rings", "ring_price", "t")}
+        given = {name: np.zeros((len(row), 1)) for name in ("rings", "ring_price", "y")}
         given["joined"] = np.zeros((len(row), 1), bool)
         for here, stacks in between(cameras, lenses, arrangement.cameras):
             for name, of_stack in zip(given, (stacks.length, stacks.price, stacks.travel, stacks.joins)):

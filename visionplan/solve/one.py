@@ -43,11 +43,14 @@ def judge_one(
     Raises
     ------
     InputError
-        For an id that the catalogue hasn't, a ring of another thread, or a working distance that the lens can't focus.
+        For an id that the catalogue hasn't, a stop or a distance that the lens can't be set to, a ring of another
+        thread.
     """
     camera_row = _row(catalogue.cameras, camera)
     lens_row = _row(catalogue.lenses, lens)
     stack = None if rings is None else _stack(catalogue, camera_row, lens_row, rings)
+    if stop is not None:
+        _check_stop(catalogue.lenses, lens_row, stop)
     problem = Problem(brief, catalogue, stop=stop, stack=stack)
     if orientation is not None:
         portrait = orientation == "portrait"
@@ -66,6 +69,13 @@ def judge_one(
     judge = Judge(problem)
     chosen = choose(judge, Items.of(problem), np.array([camera_row]), np.array([lens_row]))
     return rigs_of(judge, chosen)[0]
+
+
+def _check_stop(lenses: Table, lens: int, stop: float) -> None:
+    low, high = lenses["f-number min"][lens], lenses["f-number max"][lens]
+    if stop < low or stop > high:
+        ends = f"f/{low:g}" if np.isnan(high) else f"f/{low:g} to f/{high:g}"
+        raise _fault("stop", f"the lens can't be set to f/{stop:g}", ends)
 
 
 def _magnification(problem: Problem, lens: int, at: float) -> float:

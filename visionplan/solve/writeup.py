@@ -61,7 +61,7 @@ def _case(judge: Judge, chosen: Chosen) -> Case:
         h=column(block.case.h[row, 0] for block, row, _ in rows),
         N=column(block.case.N[row, stop] for block, row, stop in rows),
         rings=column(block.case.rings[row, 0] for block, row, _ in rows),
-        t=column(block.case.t[row, 0] for block, row, _ in rows),
+        y=column(block.case.y[row, 0] for block, row, _ in rows),
         joined=column(block.case.joined[row, 0] for block, row, _ in rows),
         ring_price=column(block.case.ring_price[row, 0] for block, row, _ in rows),
     )

@@ -116,6 +116,11 @@ def test_the_reason_is_what_sets_the_first_apart(cameras, more, reason):
     assert reason in text(rank_table(small(cameras, brief=replace(BRIEF, **more)), 80))
 
 
+def test_the_grades_are_the_briefs():
+    told = text(rank_table(small(brief=replace(BRIEF, comfort=0.25)), 80))
+    assert "Comfortable is 25 % of room and more, fair 12.5 %, tight less." in told
+
+
 def test_a_held_rig_says_what_holds_it():
     told = text(rank_table(small(brief=replace(BRIEF, working_distance=(200.0, 280.0))), 80))
     assert "reach holds it there (asked 200 to 280 mm)" in told

@@ -53,7 +53,7 @@ def columns(rows: Sequence[Row], remarks: Sequence[Remark], system: str, catalog
     def lengths(slot: str, head: str, value: Callable[[Rig], float | None], digits: int = 4) -> Column:
         scale = 25.4 if system == "inch" else 1.0
         scaled = [None if (own := value(rig)) is None else own / scale for rig in rigs]
-        return Column(slot, f"{head}{unit}", _numbers(scaled, digits), right=True)
+        return Column(slot, head.format(unit), _numbers(scaled, digits), right=True)
 
     def texts(slot: str, head: str, text: Callable[[Rig], str], must: bool = False, least: int = 0) -> Column:
         return Column(slot, head, tuple(text(rig) for rig in rigs), must=must, least=least)
@@ -66,20 +66,20 @@ def columns(rows: Sequence[Row], remarks: Sequence[Remark], system: str, catalog
         texts("lens", "lens", lambda rig: clean(rig.lens), must=True),
         texts("outcome", outcome[0], _outcome(0, system), must=True),
         texts("notes", "", lambda rig: marks(rig.rank, remarks), must=True),
-        lengths("distance", "WD ", lambda rig: rig.working_distance),
+        lengths("distance", "WD {}", lambda rig: rig.working_distance),
         numbers("price", "price", lambda rig: rig.price, 0),
         Column("stop", "stop", tuple(figure(rig.stop) for rig in rigs), right=True),
         texts("outcome", outcome[1], lambda rig: shorten(_outcome(1, system)(rig), _BRIEF)),
-        Column("sampling", f"{unit}/px", lengths("", "", lambda rig: rig.sampling, 3).cells, right=True),
+        lengths("sampling", "{}/px", lambda rig: rig.sampling, 3),
         texts("outcome", outcome[1], _outcome(1, system), least=_BRIEF),
         texts("outcome", outcome[1], _outcome(2, system)),
         texts("setup", "rings, setting", setup),
         texts("outcome", outcome[1], _outcome(3, system)),
         texts("grade", "grade", lambda rig: rig.grade or ""),
         texts("field", f"field {unit}", lambda rig: field(rig, system).removesuffix(f" {unit}")),
-        lengths("depth", "depth ", _depth, 3),
+        lengths("depth", "depth {}", _depth, 3),
         numbers("snr", "SNR", lambda rig: rig.snr, 2),
-        lengths("length", "to back ", lambda rig: rig.length),
+        lengths("length", "to back {}", lambda rig: rig.length),
         numbers("price", f"price {currency(catalogue)}".rstrip(), lambda rig: rig.price, 0),
     ]
     return [column for column in found if any(cell not in ("", "–") for cell in column.cells)]

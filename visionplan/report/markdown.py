@@ -27,26 +27,29 @@ def _table(rows: Sequence[Row], remarks: Sequence[Remark], system: str) -> str:
     def own(name: str) -> Callable[[Row], str]:
         return lambda row: BY_NAME[name].text(row.rig, system)
 
+    def escaped(cell: Callable[[Row], str]) -> Callable[[Row], str]:
+        return lambda row: markdown(cell(row))
+
     def outcome(row: Row) -> str:
         return short(row.rig.shortfall) if row.rig.shortfall else "misses a gate"
 
     columns: dict[str, Callable[[Row], str]] = {
         "#": lambda row: str(row.rig.rank),
-        "camera": lambda row: row.rig.camera + (f" +{len(row.folded)}" if row.folded else ""),
-        "lens": lambda row: row.rig.lens,
+        "camera": escaped(lambda row: row.rig.camera + (f" +{len(row.folded)}" if row.folded else "")),
+        "lens": escaped(lambda row: row.rig.lens),
         "stop": own("stop"),
-        "rings, setting": lambda row: setup(row.rig),
+        "rings, setting": escaped(lambda row: setup(row.rig)),
         "working distance": own("working distance"),
         "sampling": own("sampling"),
     }
     if rows[0].rig.fits:
         columns |= {"latitude": own("latitude"), "grade": own("grade"), "pinch": own("pinch")}
     else:
-        columns |= {"short by": outcome, "misses": lambda row: "; ".join(misses(row.rig, system))}
-    columns |= {"price": own("price"), "notes": lambda row: marks(row.rig.rank, remarks)}
-    cells = {head: [markdown(cell(row)) for row in rows] for head, cell in columns.items()}
+        columns |= {"short by": outcome, "misses": escaped(lambda row: "; ".join(misses(row.rig, system)))}
+    columns |= {"price": escaped(own("price")), "notes": lambda row: marks(row.rig.rank, remarks)}
+    cells = {head: [cell(row) for row in rows] for head, cell in columns.items()}
     cells = {head: column for head, column in cells.items() if any(column)}
-    lines = [[markdown(head) for head in cells], ["---"] * len(cells), *zip(*cells.values())]
+    lines = [list(cells), ["---"] * len(cells), *zip(*cells.values())]
     return "\n".join(f"| {' | '.join(line)} |" for line in lines)
 
 

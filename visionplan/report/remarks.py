@@ -198,10 +198,10 @@ Paragraph = list[tuple[str, str]]
 
 def beneath(ranking: Ranking, rows: Sequence[Row], remarks: Sequence[Remark], system: str = "mm") -> list[Paragraph]:
     """What stands under the rows."""
-    comfort = ranking.brief.comfort
+    comfort, half = (show(part * ranking.brief.comfort, "1", percent=True) for part in (1, 0.5))
     first = [*lead(ranking, rows, system)]
     if ranking.fitting:
-        first.append(f"Comfortable is {room(comfort)} of room and more, fair {room(comfort / 2)}, tight less.")
+        first.append(f"Comfortable is {comfort} of room and more, fair {half}, tight less.")
     everywhere = [remark.text for remark in remarks if not remark.mark]
     paragraphs = [
         [("", note) for note in ranking.notes],

@@ -103,7 +103,7 @@ def miss_words(rig: Rig, verdict: Verdict, system: str = "mm") -> str:
         return f"{verdict.name}: {lacking(rig, verdict)}, which is strictly a miss"
     if verdict.gate:
         asked = asked_words(verdict, system)
-        told = "" if asked == "same thread" else f", asked {asked}"
+        told = "" if asked.startswith("same thread") else f", asked {asked}"
         return f"{verdict.name}: {got_words(rig, verdict, system)}{told}"
     if verdict.never:
         return f"{verdict.name} at any magnification"

@@ -78,9 +78,9 @@ def test_everything_that_was_asked_chosen_from_and_chosen_stands_there():
 
 
 def test_the_bill_counts_every_piece_and_adds_up():
-    wide = replace(BRIEF, field=(40.0, 15.0), working_distance=(20.0, 200.0), above=0.5, below=0.5, max_count=3)
+    wide = replace(BRIEF, field=(400.0, 60.0), max_count=4)
     ranking, _ = shortlist(brief=wide)
-    rig = judge_one(wide, ranking.catalogue, "camera lens", "lens", rings=["R2", "R2"])
+    rig = judge_one(wide, ranking.catalogue, "camera lens", "lens", rings=["R0.5", "R0.5"])
     assert rig.grid[0] > 1
     entries = [Entry(rig)]
     bill = tables(shortlist_document(ranking, entries, "today"))[-1]

@@ -12,6 +12,7 @@ from visionplan.solve.choose import Items, choose
 from visionplan.solve.judge import Judge
 from visionplan.solve.orders import ORDERS
 from visionplan.solve.problem import Problem
+from visionplan.solve.tolerance import yield_of
 from visionplan.solve.writeup import rigs_of
 
 WORKS = Path(__file__).parents[2] / "catalogs_demo"
@@ -21,6 +22,11 @@ BRIEFS = sorted(WORKS.glob("briefs/*.toml"))
 @pytest.fixture(scope="module")
 def catalogue():
     return read_catalogue(WORKS)
+
+
+def _yield(rig):
+    borne = yield_of(rig)
+    return float("inf") if borne is None else -borne.share
 
 
 def _key(rig, order):
@@ -37,6 +43,7 @@ def _key(rig, order):
         "depth": lambda: (-sum(rig.depth), bool(rig.unknown)),
         "snr": lambda: (last if rig.snr is None else -rig.snr, bool(rig.unknown)),
         "sampling": lambda: (rig.sampling, bool(rig.unknown)),
+        "yield": lambda: (_yield(rig), bool(rig.unknown)),
         "length": lambda: (last if rig.length is None else rig.length, bool(rig.unknown)),
     }
     return (False, *(round(float(figure), 7) for figure in figures[order]()), rig.camera, rig.lens)

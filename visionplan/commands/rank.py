@@ -8,7 +8,7 @@ from visionplan.commands import console, inputs
 if TYPE_CHECKING:
     from visionplan.solve.rig import Ranking
 
-ORDERS = ("value", "latitude", "depth", "snr", "price", "sampling", "length")
+ORDERS = ("value", "latitude", "depth", "snr", "price", "sampling", "yield", "length")
 """The solver's, named here so that help and completion needn't load it."""
 FORMATS = ("table", "json", "csv", "markdown")
 

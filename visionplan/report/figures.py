@@ -8,6 +8,7 @@ from visionplan.catalogue.items import Catalogue
 from visionplan.report.words import pinch_words
 from visionplan.solve.rig import Rig
 from visionplan.solve.span import TIE
+from visionplan.solve.tolerance import yield_of
 from visionplan.text import clean, figure
 from visionplan.units import show
 
@@ -105,12 +106,19 @@ def contrast(plane: str) -> Callable[[Rig], float | None]:
     return lambda rig: None if rig.contrast is None else getattr(rig.contrast, plane)
 
 
+def _share(rig: Rig) -> float | None:
+    """The share of rigs built to the plan that bear their tolerances."""
+    borne = yield_of(rig)
+    return None if borne is None else borne.share
+
+
 FIGURES: tuple[Figure, ...] = (
     Figure("grade", lambda rig: rig.grade, none="doesn't fit"),
     Figure("latitude", lambda rig: rig.latitude, "1", True, better=1, words=lambda rig: room(rig.latitude)),
     Figure("shortfall", lambda rig: rig.shortfall, "1", True, better=-1, words=lambda rig: short(rig.shortfall)),
     Figure("pinch", lambda rig: pinch_words(rig) or None),
     Figure("unknown", lambda rig: ", ".join(rig.unknown) or None, none="nothing"),
+    Figure("yield", _share, "1", True, better=1),
     Figure("stop", lambda rig: rig.stop),
     Figure("stops that fit", lambda rig: ", ".join(map(figure, rig.stops)) or None),
     Figure("spacer rings", rings),

@@ -29,6 +29,7 @@ _ORDER_FIGURES: dict[str, Callable[[Rig, str], str]] = {
     "snr": BY_NAME["signal to noise"].text,
     "price": BY_NAME["price"].text,
     "sampling": BY_NAME["sampling"].text,
+    "yield": BY_NAME["yield"].text,
     "length": BY_NAME["to the camera back"].text,
 }
 _NUMBER = re.compile(r"\d+(?:\.\d+)?")

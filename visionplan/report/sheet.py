@@ -15,7 +15,7 @@ from visionplan.report.words import lacking, misses, pinch_words
 from visionplan.solve import advice
 from visionplan.solve.acceptance import Acceptance, acceptance
 from visionplan.solve.rig import Rig
-from visionplan.solve.tolerance import Yield, yields
+from visionplan.solve.tolerance import Yield, yield_of
 from visionplan.text import figure
 from visionplan.units import show
 
@@ -263,7 +263,7 @@ def _expected(rig: Rig, system: str) -> Iterator[Row]:
         focus, above, below = (show(value, "1", percent=True, digits=3) for value in planes)
         yield "contrast", f"{focus} of the smallest feature in focus, {above} nearest, {below} farthest"
     yield "to camera back", f"{length(rig.length)} from the reference plane, cable not counted"
-    (borne,) = yields([rig])
+    borne = yield_of(rig)
     if borne is not None:
         yield "yield", yield_words(borne)
 

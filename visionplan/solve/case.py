@@ -130,9 +130,9 @@ class Case:
 
     def pick(self, arrangement: Arrangement, rows: np.ndarray, stops: np.ndarray) -> "Case":
         """The case of some rigs of one arrangement, each at one stop: arrays of shape (picked, 1)."""
-        rings = self.rings[rows] if np.ndim(self.rings) else self.rings
+        rings, y = (own[rows] if np.ndim(own) else own for own in (self.rings, self.y))
         cameras, lenses, N = self.cameras[rows], self.lenses[rows], self.N[rows, stops][:, None]
-        return case_of(self.problem, arrangement, cameras, lenses, N=N, rings=rings)
+        return case_of(self.problem, arrangement, cameras, lenses, N=N, rings=rings, y=y)
 
     def rows(self) -> list["Case"]:
         """Cases of one rig each, of scalars; only where every symbol is (rigs, 1) or the same for all."""

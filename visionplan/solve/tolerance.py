@@ -9,13 +9,15 @@ magnification: what the distance is off is within the slack of its depth.
 from collections.abc import Sequence
 from dataclasses import dataclass
 from math import sqrt
+from weakref import WeakKeyDictionary
 
 import numpy as np
 
 from visionplan.optics.conjugates import magnification_at, object_distance
 from visionplan.solve.case import Case
-from visionplan.solve.demands import NOT_ASKED, asked_demands, judge
+from visionplan.solve.demands import NOT_ASKED, Demand, asked_demands, judge
 from visionplan.solve.rig import Rig
+from visionplan.solve.rigs import Rigs
 from visionplan.solve.span import holds
 from visionplan.solve.variant import varied
 
@@ -49,14 +51,36 @@ class Yield:
         return self.fails[0][0] if self.fails else None
 
 
+_KNOWN: WeakKeyDictionary[Case, Yield | None] = WeakKeyDictionary()
+
+
 def yields(rigs: Sequence[Rig]) -> list[Yield | None]:
     """The yield of rigs of one brief; None for a rig that doesn't fit, or where nothing says what may be off."""
     found: list[Yield | None] = [None] * len(rigs)
     drawn = [place for place, rig in enumerate(rigs) if rig.fits and _varies(rig.case)]
-    for begin in range(0, len(drawn), _BLOCK):
-        some = drawn[begin : begin + _BLOCK]
-        for place, one in zip(some, _block([rigs[place] for place in some])):
-            found[place] = one
+    if drawn:
+        case = _together([rigs[place].case for place in drawn])
+        hits, fails = _drawn(case, np.array([rigs[place].magnification for place in drawn])[:, None])
+        for number, place in enumerate(drawn):
+            found[place] = _yield(rigs[place].case, int(hits[number]), {name: n[number] for name, n in fails.items()})
+    return found
+
+
+def yield_of(rig: Rig) -> Yield | None:
+    """The yield of one rig, worked out once."""
+    if rig.case not in _KNOWN:
+        _KNOWN[rig.case] = yields([rig])[0]
+    return _KNOWN[rig.case]
+
+
+def shares(rigs: Rigs) -> np.ndarray:
+    """The share of draws that holds, of every rig's every stop that fits: (rigs, stops), NaN for the others."""
+    found = np.full(rigs.fits.shape, np.nan)
+    rows, stops = np.nonzero(rigs.fits & _varies(rigs.case))
+    if len(rows):
+        found[rows, stops] = (
+            _drawn(rigs.case.pick(rigs.arrangement, rows, stops), rigs.point[rows, stops][:, None])[0] / DRAWS
+        )
     return found
 
 
@@ -73,52 +97,76 @@ def interval(hits: int, draws: int) -> tuple[float, float]:
 
 
 def focal_tolerance(case: Case) -> float | None:
-    """What the lens states, as a fraction; None for nothing. A telecentric lens has no focal length to be off."""
-    stated = float(case.problem.catalogue.lenses["focal tolerance"][case.lenses])
-    return 0.0 if case.telecentric else None if np.isnan(stated) else stated
+    """What the lens of one rig states, as a fraction; None for nothing."""
+    stated = float(_focal_tolerance(case))
+    return None if np.isnan(stated) else stated
 
 
-def _varies(case: Case) -> bool:
-    return focal_tolerance(case) is not None or case.brief.working_distance_tolerance > 0
+def _focal_tolerance(case: Case):
+    """Of many rigs, NaN where not stated; a telecentric lens has no focal length to be off."""
+    stated = case.problem.catalogue.lenses["focal tolerance"][case.lenses]
+    return np.where(case.telecentric, 0.0, stated[:, None] if np.ndim(stated) else stated)
 
 
-def _block(rigs: Sequence[Rig]) -> list[Yield]:
-    case, m = drawn(rigs)
-    every, names, missed = np.ones((len(rigs), DRAWS), bool), [], []
-    for demand in asked_demands(case.ask):
-        if demand.place:
-            continue
-        lo, hi, code = judge(demand, case)
-        held = (holds(lo, m) & holds(m, hi)) | (code == NOT_ASKED)
-        every &= held
-        names.append(demand.name)
-        missed.append(np.broadcast_to(~held, every.shape).mean(axis=1))
-    found = []
-    for number, (rig, hits) in enumerate(zip(rigs, every.sum(axis=1))):
-        fails = [(name, float(share[number])) for name, share in zip(names, missed) if share[number]]
-        found.append(
-            Yield(
-                int(hits) / DRAWS,
-                *interval(int(hits), DRAWS),
-                tuple(sorted(fails, key=lambda fail: -fail[1])),
-                focal_tolerance(rig.case),
-                rig.case.brief.working_distance_tolerance,
-            )
-        )
-    return found
+def _varies(case: Case):
+    """Whether anything is stated that may be off."""
+    return (case.brief.working_distance_tolerance > 0) | ~np.isnan(_focal_tolerance(case))
 
 
-def drawn(rigs: Sequence[Rig]) -> tuple[Case, np.ndarray]:
-    """The rigs as drawn, and the magnification of each draw: arrays of shape (rigs, draws)."""
-    first = rigs[0].case
-    numeric = [name for name, value in first.__dict__.items() if isinstance(value, int | float)]
-    columns = {name: np.array([getattr(rig.case, name) for rig in rigs])[:, None] for name in numeric}
-    planned = varied(first, **columns)
-    m = np.array([rig.magnification for rig in rigs])[:, None]
+def _yield(case: Case, hits: int, fails: dict[str, int]) -> Yield:
+    often = sorted(((name, int(count) / DRAWS) for name, count in fails.items() if count), key=lambda fail: -fail[1])
+    tolerance = case.brief.working_distance_tolerance
+    return Yield(hits / DRAWS, *interval(hits, DRAWS), tuple(often), focal_tolerance(case), tolerance)
+
+
+def _together(cases: Sequence[Case]) -> Case:
+    """One case of many rigs: arrays of shape (rigs, 1)."""
+    numeric = [name for name, value in cases[0].__dict__.items() if isinstance(value, int | float)]
+    columns = {name: np.array([getattr(case, name) for case in cases])[:, None] for name in numeric}
+    columns |= {name: columns[name][:, 0] for name in ("cameras", "lenses")}
+    return varied(cases[0], **columns)
+
+
+def _drawn(case: Case, m: np.ndarray) -> tuple[np.ndarray, dict[str, np.ndarray]]:
+    """Of rigs planned at m (shape (rigs, 1)): how many draws hold, and in how many each demand fails."""
+    demands = [demand for demand in asked_demands(case.ask) if not demand.place]
+    hits, fails = np.full(len(m), DRAWS), {demand.name: np.zeros(len(m), int) for demand in demands}
+    # Each bound rises or falls with the focal length alone, and the magnification does with it and with the distance:
+    # what holds at the ends of both for the worse of its bounds holds in between, and needs no draws.
+    ends = _built(case, m, np.array([-1.0, 1.0, -1.0, 1.0]), np.array([-1.0, -1.0, 1.0, 1.0]))
+    risky = ~np.logical_and.reduce([_holds(demand, *ends, worst=True).all(axis=1) for demand in demands])
     focal, distance = np.random.default_rng(SEED).uniform(-1, 1, (2, DRAWS))
-    tolerance = np.array([focal_tolerance(rig.case) or 0.0 for rig in rigs])[:, None]
-    f = planned.f * (1 + tolerance * focal)
+    left = np.flatnonzero(risky)
+    for rows in (left[begin : begin + _BLOCK] for begin in range(0, len(left), _BLOCK)):
+        built = _built(_some(case, rows), m[rows], focal, distance)
+        every = np.ones((len(rows), DRAWS), bool)
+        for demand in demands:
+            held = _holds(demand, *built)
+            fails[demand.name][rows] = DRAWS - held.sum(axis=1)
+            every &= held
+        hits[rows] = every.sum(axis=1)
+    return hits, fails
+
+
+def _built(case: Case, m: np.ndarray, focal: np.ndarray, distance: np.ndarray) -> tuple[Case, np.ndarray]:
+    """The rigs with their focal length and distance off by shares of their tolerances, and the magnification then."""
+    f = case.f * (1 + np.nan_to_num(_focal_tolerance(case)) * focal)
     with np.errstate(invalid="ignore", divide="ignore"):
-        s = object_distance(planned.f, m) + first.brief.working_distance_tolerance * distance
+        s = object_distance(case.f, m) + case.brief.working_distance_tolerance * distance
         built = np.where(s > f, magnification_at(f, s), np.inf)
-    return varied(planned, f=f), np.where(planned.telecentric, m, built)
+    return varied(case, f=f), np.where(case.telecentric, m, built)
+
+
+def _holds(demand: Demand, case: Case, m: np.ndarray, worst: bool = False) -> np.ndarray:
+    """Whether a demand holds: shape of m; with `worst` for the worst bound of each row."""
+    lo, hi, code = judge(demand, case)
+    if worst:
+        lo, hi = np.max(lo, axis=-1, keepdims=True), np.min(hi, axis=-1, keepdims=True)
+        m = np.where(np.isinf(m), np.nan, m)
+    return np.broadcast_to((holds(lo, m) & holds(m, hi)) | (code == NOT_ASKED), m.shape)
+
+
+def _some(case: Case, rows: np.ndarray) -> Case:
+    """Of some rigs."""
+    shared = {name: value[rows] for name, value in case.__dict__.items() if np.ndim(value) and len(value) > 1}
+    return varied(case, **shared)

@@ -136,9 +136,9 @@ def line_rate(case: Case):
 
 
 def fastest_rows(case: Case):
-    """Rows in a second that the line rate and the shortest exposure, or the pulse, allow."""
+    """Rows in a second that the line rate and the shortest exposure, or the pulse, allow; NaN where no rate is stated."""
     shortest = case.t_min if case.brief.pulse is None else case.brief.pulse
-    return np.fmin(case.line_rate, 1 / shortest)
+    return np.where(np.isnan(case.line_rate), np.nan, np.fmin(case.line_rate, 1 / shortest))
 
 
 def _unless(possible, lo, hi):

@@ -108,7 +108,13 @@ def price(case: Case):
 
 
 def _stock(case: Case):
+    """Fewer of what is in stock of camera and lens; NaN where one isn't stated."""
     return np.minimum(case.camera_stock, case.lens_stock)
+
+
+def _stock_codes(case: Case):
+    needed = np.asarray(case.nx) * case.ny
+    return np.maximum(_at_least(case.camera_stock, needed), _at_least(case.lens_stock, needed))
 
 
 def _words(table: str, column: str) -> Callable[[Case], str]:
@@ -310,7 +316,7 @@ GATES: tuple[Gate, ...] = (
     Gate(
         "stock",
         "pair",
-        lambda case: _at_least(_stock(case), np.asarray(case.nx) * case.ny),
+        _stock_codes,
         lambda ask: ask.brief.in_hand,
         lambda case: float(case.nx * case.ny),
         _stock,

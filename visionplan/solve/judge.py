@@ -151,11 +151,18 @@ class Judge:
                 # without helicoids the nearest to either side; with them a longer stack may reach less far
                 first = np.where(travel > 0, 0, np.maximum(first - 1, 0))
                 last = np.minimum(last + 1, len(length))
+            useless = low[here] > high[here]
+            last = np.where(useless, 0, last)
             first = np.maximum(first, 1)  # the empty stack is there already
             count = np.maximum(last - first, 0)
             rows.append(np.repeat(here, count))
             begin = np.cumsum(count) - count
             stack.append(np.arange(count.sum()) - np.repeat(begin - first, count))
+            if all_stacks:  # where no stack helps the span, one may still spare a gate: the mount's, the price's
+                unpriced = np.isnan(stacks.price) & (self.problem.brief.max_price is not None)
+                sparing = np.flatnonzero((stacks.rings == 1) & ((stacks.joins & ~stacks.joins[0]) | unpriced))
+                rows.append(np.repeat(here[useless], len(sparing)))
+                stack.append(np.tile(sparing, np.count_nonzero(useless)))
         row, chosen = np.concatenate(rows), np.concatenate(stack)
         cameras, lenses = case.cameras[row], case.lenses[row]
         given = {name: np.zeros((len(row), 1)) for name in ("rings", "ring_price", "y")}

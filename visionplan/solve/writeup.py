@@ -188,7 +188,7 @@ def _verdict(demand: Demand, columns: dict[str, Any], number: int) -> Verdict:
         demand.name,
         None if never or lo == 0 else lo,
         None if never or hi == np.inf else hi,
-        asked if isinstance(asked, tuple) else _known(asked),
+        _range(asked) if isinstance(asked, tuple) else _known(asked),
         _known(columns["got"][number]),
         demand.unit,
         VERDICTS[code],
@@ -211,6 +211,10 @@ _UNASKED = {
 
 def _word(value: Any) -> Value:
     return value if isinstance(value, str) else _known(value)
+
+
+def _range(ends: tuple[float, float]) -> Value:
+    return ends if all(map(isfinite, ends)) else None
 
 
 def _known(value: Any) -> float | None:

@@ -55,7 +55,7 @@ def read_catalogues(folders: Sequence[Path | str], skip_bad: bool = False) -> Ca
             if table is not None:
                 tables[item].append((table, ledger))
     read = [pair for pairs in tables.values() for pair in pairs]
-    _check_currencies(read)
+    check_currencies(read)
     for item, pairs in tables.items():
         check_clashes(pairs)
         tables[item] = pairs = [(without(ledger.bad, table), ledger) for table, ledger in pairs]
@@ -119,7 +119,8 @@ def _read_bytes(path: Path, ledger: Ledger, item: str) -> bytes | None:
     return None
 
 
-def _check_currencies(read: Sequence[tuple[Table, Ledger]]) -> None:
+def check_currencies(read: Sequence[tuple[Table, Ledger]]) -> None:
+    """Prices of all files are in one currency."""
     named = [(table, ledger) for table, ledger in read if table.currency]
     for table, ledger in named[1:]:
         first = named[0][0]

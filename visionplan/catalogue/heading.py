@@ -12,7 +12,7 @@ from visionplan.text import clean, quoted, shorten
 from visionplan.units import UnitError, factor
 
 _MOST_COMPARED = 200
-_CURRENCY = re.compile(r"[A-Z]{3}|[$€£¥]")
+CURRENCY = re.compile(r"[A-Z]{3}|[$€£¥]")
 
 
 @dataclass(frozen=True)
@@ -105,7 +105,7 @@ def unnamed(at: int) -> str:
 
 
 def _add_field(heading: Heading, column: Column, at: int, shown: str, unit: str, ledger: Ledger) -> None:
-    if column.currency and _CURRENCY.fullmatch(unit):
+    if column.currency and CURRENCY.fullmatch(unit):
         heading.currency, unit = unit, ""
     bare = 1.0 if column.kind != "number" or column.unit in ("", "1") else None
     try:

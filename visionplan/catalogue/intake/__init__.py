@@ -1,0 +1,1 @@
+"""Catalogue intake: other people's sheets, taken into a catalogue through a column map."""

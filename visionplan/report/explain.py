@@ -4,6 +4,7 @@ import math
 from collections.abc import Iterable, Iterator
 
 from visionplan import __version__
+from visionplan.report.advice import advice_rows
 from visionplan.report.derivation import figures, working_point
 from visionplan.report.figures import grid, rings, room, short
 from visionplan.report.lines import wrap
@@ -51,6 +52,7 @@ def explain(rig: Rig, system: str = "mm") -> str:
             *_wrapped("  ", ", ".join(idle)),
             *_section("Span", _span(rig)),
             *_section("Figures", figures(rig, system)),
+            *_section("Advice", advice_rows(rig, system)),
             *_heading("Assumptions and warnings"),
             *(line for told in rig.assumptions or ("None.",) for line in _wrapped("  - ", clean(told))),
             "",

@@ -73,7 +73,7 @@ def judge_one(
 
 def _check_stop(lenses: Table, lens: int, stop: float) -> None:
     low, high = lenses["f-number min"][lens], lenses["f-number max"][lens]
-    if stop < low or stop > high:
+    if stop not in lenses["stops"][lens] and (stop < low or stop > high):
         ends = f"f/{low:g}" if np.isnan(high) else f"f/{low:g} to f/{high:g}"
         raise _fault("stop", f"the lens can't be set to f/{stop:g}", ends)
 

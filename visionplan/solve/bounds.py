@@ -136,7 +136,7 @@ def line_rate(case: Case):
 
 
 def fastest_rows(case: Case):
-    """Rows in a second that the line rate and the shortest exposure, or the pulse, allow; NaN where no rate is stated."""
+    """Rows in a second that the line rate and the shortest exposure, or the pulse, allow; NaN for no stated rate."""
     shortest = case.t_min if case.brief.pulse is None else case.brief.pulse
     return np.where(np.isnan(case.line_rate), np.nan, np.fmin(case.line_rate, 1 / shortest))
 

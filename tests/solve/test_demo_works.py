@@ -174,7 +174,11 @@ def test_glaze_pinholes():
     assert (best.camera, best.lens, best.spacers, best.price) == ("roll-6-usb-mono", "plain-25", ("C-5",), 429)
     # f/2.8: u = 0.35 x 25/(2.8 x 0.02) = 156.3, m = 25/(156.3 - 22.7) = 0.187: no depth. f/16, diffraction:
     # 1.22 x 0.00055 x 16 = 0.01074, m >= 0.01074/(0.03 - 0.01074/1.1) = 0.53: beyond the ring.
-    check(best, "comfortable", ("sampling", "travel"), (0.2405, 0.3701), 5.6, (4, 5.6, 8, 11))
+    # At f/8 contrast falls short even in focus: m = sqrt(0.2405 x 0.3701) = 0.2983, Nw = 8 (1 + 0.2983/1.1) = 10.17,
+    # 1/(0.06 x 0.2983) = 55.87 lp/mm of a cutoff of 178.8, s = 0.3125: (2/pi)(acos s - s sqrt(1 - s^2)) = 0.6087, times
+    # the pixel's sinc(0.1341) = 0.9707: 0.591 of 0.6 asked. At f/5.6 s = 0.2187: 0.7238 x 0.9707 = 0.7026.
+    check(best, "comfortable", ("sampling", "travel"), (0.2405, 0.3701), 5.6, (4, 5.6))
+    assert best.contrast.focus == approx(0.7026, rel=HAND)
     assert best.latitude == approx(0.3701 / 0.2405 - 1, rel=3e-3)
     assert best.working_distance == approx(25 * (1 + 1 / 0.2983) - 22 + 0.05, rel=HAND)
     assert all(rig.spacers or rig.lens.startswith("macro-") for rig in ranked("glaze-pinholes").rigs if rig.fits)

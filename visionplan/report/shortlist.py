@@ -35,7 +35,8 @@ def compared(entries: Sequence[Entry], system: str = "mm") -> list[tuple[str, li
     rows = []
     for figure in FIGURES:
         texts = [figure.text(rig, system) for rig in rigs]
-        if any(figure.value(rig) not in (None, "") for rig in rigs):
+        trivial = figure.name == "shortfall" and all(rig.fits for rig in rigs)
+        if not trivial and any(figure.value(rig) not in (None, "") for rig in rigs):
             rows.append((figure.name, texts, best(figure, rigs)))
     missed = ["; ".join(misses(rig, system)) or "nothing" for rig in rigs]
     if set(missed) != {"nothing"}:

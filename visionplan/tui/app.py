@@ -109,9 +109,9 @@ class PlanApp(Filing, Solving, App[None]):
 
     # the screen
 
-    def arrange(self) -> None:
-        """Share the screen among the views."""
-        width, height = self.size
+    def arrange(self, size: tuple[int, int] | None = None) -> None:
+        """Share the screen, of a size that has just changed where it is given, among the views."""
+        width, height = size or self.size
         enough = width >= NEEDED[0] and height >= NEEDED[1]
         self.wide = width >= WIDE[0] and height >= WIDE[1]
         with self.batch_update():
@@ -130,7 +130,7 @@ class PlanApp(Filing, Solving, App[None]):
 
     def on_resize(self, event: Resize) -> None:
         """Share the new screen."""
-        self.arrange()
+        self.arrange(event.size)
         self.call_after_refresh(self.redraw)
 
     def redraw(self) -> None:
@@ -241,7 +241,7 @@ class PlanApp(Filing, Solving, App[None]):
         if order and order != self.order:
             self.state.settings["order"] = order
             self.state.keep()
-            self.rigs.cursor, self.rigs._place = None, 0
+            self.rigs.touched = False
             self.rank()
         self.redraw()
 
@@ -290,7 +290,7 @@ class PlanApp(Filing, Solving, App[None]):
         yield from self.pane.pairs_of_keys
         for binding in (*self._of(self.pane), *self._everywhere()):
             if binding.show:
-                yield binding.key_display or key_names(binding), binding.description
+                yield binding.key_display or key_names(binding), self.pane.word(binding)
 
     def action_help(self) -> None:
         """Tell what this view is and its keys."""

@@ -1,6 +1,7 @@
 """The Brief: every demand as one line, with what is asked and its toll, edited where it stands."""
 
 import math
+from functools import lru_cache, partial
 from typing import ClassVar
 
 from textual.binding import Binding, BindingType
@@ -8,6 +9,7 @@ from textual.events import Key, Paste
 
 from visionplan.brief.fields import BY_KEY, LINES, SECTIONS, Line, expected
 from visionplan.brief.forms import value_text, value_texts
+from visionplan.brief.model import Brief
 from visionplan.faults import Fault, InputError
 from visionplan.tui.entry import Entry
 from visionplan.tui.pane import Item, Pane
@@ -17,6 +19,17 @@ from visionplan.tui.rows import Row, cell, ends, fit
 _NAME = 24
 _BAR = 8
 _PREVIEW = 5
+
+
+@lru_cache(4)
+def _texts(text: str) -> dict[str, str]:
+    return value_texts(text)
+
+
+@lru_cache(4)
+def _held(brief: Brief) -> dict[str, str]:
+    """What holds where a line is left out."""
+    return {line.key: value_text(brief, line.key) for line in LINES}
 
 
 class BriefPane(Pane):
@@ -43,13 +56,13 @@ class BriefPane(Pane):
 
     def items(self, width: int) -> list[Item]:
         """Every line in its section."""
-        texts = value_texts(self.state.work.text)
+        texts = _texts(self.state.work.text)
         items: list[Item] = []
         for section, doc in SECTIONS.items():
             items.append(([(f" {doc}", "head")], None))
             for line in LINES:
                 if line.section == section:
-                    items.append((self._row(line, texts, width), line.key))
+                    items.append((partial(self._row, line, texts, width), line.key))
                     if self.entry and line.key == self.cursor:
                         items.append((self._under(width), None))
         return items
@@ -65,7 +78,7 @@ class BriefPane(Pane):
         values = width - 2 - names - sum(len(text) for text, _ in tolls) - 1
         if self.entry and here:
             return [mark, cell(name, names, "strong"), *self.entry.row(values), (" ", ""), *tolls]
-        value = texts[line.key] if asked else value_text(self.state.brief, line.key)
+        value = texts[line.key] if asked else _held(self.state.brief)[line.key]
         shown = value if asked else f"not asked ({value})" if value not in ("", "any") else "not asked"
         role = "" if asked else "dim"
         return [

@@ -28,7 +28,7 @@ class FaultsPage(Page[str]):
 
     def __init__(self, name: str, faults: Sequence[Fault], catalogue: bool = True):
         count = f"{len(faults):,} faults" if len(faults) > 1 else "1 fault"
-        super().__init__(f"{clean(name)}: {count}")
+        super().__init__(f"{count} in {clean(name)}")
         self.faults = faults
         self.catalogue = catalogue
         self.place = self.top = 0

@@ -53,9 +53,10 @@ class Lines(Widget):
             self.refresh(*regions)
 
     def _fitted(self, row: Row, width: int) -> Row:
+        fitted = fit(row, width)
         if self.app.ascii:  # type: ignore[attr-defined]
-            row = [(to_ascii(text.translate(_PLAIN)), role) for text, role in row]
-        return fit(row, width)
+            fitted = fit([(to_ascii(text.translate(_PLAIN)), role) for text, role in fitted], width)
+        return fitted
 
     def on_resize(self) -> None:
         """Draw at the new size."""

@@ -123,9 +123,10 @@ class PickPage(Page[str]):
 
     @property
     def found(self) -> list[Option]:
-        """The options that hold what was typed."""
-        words = self.entry.text.lower().split()
-        return [one for one in self.options if all(word in f"{one[0]} {one[1]}".lower() for word in words)]
+        """The options that hold what was typed, those whose names begin with it first."""
+        typed = self.entry.text.lower().strip()
+        found = [one for one in self.options if all(word in f"{one[0]} {one[1]}".lower() for word in typed.split())]
+        return sorted(found, key=lambda one: not one[0].lower().startswith(typed))
 
     def content(self, width: int, height: int) -> list[Row]:
         """Introduction, what was typed, the options in view."""

@@ -1,6 +1,6 @@
 """What the views have in common: rows under a cursor, scrolled, with a hint for what the cursor stands on."""
 
-from collections.abc import Hashable, Sequence
+from collections.abc import Callable, Hashable, Sequence
 from typing import TYPE_CHECKING, ClassVar
 
 from textual.binding import Binding, BindingType
@@ -13,8 +13,8 @@ if TYPE_CHECKING:
     from visionplan.tui.app import PlanApp
     from visionplan.tui.state import State
 
-Item = tuple[Row, Hashable]
-"""A row, and what the cursor stands on there; None where it can't."""
+Item = tuple[Row | Callable[[], Row], Hashable]
+"""A row, or what draws it once it comes into view, and what the cursor stands on there; None where it can't."""
 
 
 class Pane(Lines, can_focus=True):
@@ -32,6 +32,8 @@ class Pane(Lines, can_focus=True):
     number = 0
     """The key that brings it up."""
     label = ""
+    first = False
+    """Whether the cursor stays on the first row until it is moved."""
     pairs_of_keys: tuple[tuple[str, str], ...] = ()
 
     def __init__(self) -> None:
@@ -39,6 +41,8 @@ class Pane(Lines, can_focus=True):
         self.cursor: Hashable = None
         self.top = 0
         self._place = 0
+        self.touched = False
+        """Whether the cursor was moved by hand; else it stays on the first row."""
 
     app: "PlanApp"  # type: ignore[assignment]
 
@@ -59,6 +63,10 @@ class Pane(Lines, can_focus=True):
         """Rows that stay at the bottom."""
         return ()
 
+    def word(self, binding: Binding) -> str:
+        """What a key does where the cursor stands."""
+        return binding.description
+
     def hint(self) -> str:
         """What there is to know of the place of the cursor, in a sentence."""
         return ""
@@ -69,7 +77,9 @@ class Pane(Lines, can_focus=True):
 
     def settle(self, keys: Sequence[Hashable]) -> None:
         """Put the cursor on a row that is there: the one it was on, else the one in its place."""
-        if self.cursor in keys:
+        if keys and not self.touched and self.first:
+            self.cursor, self._place = keys[0], 0
+        elif self.cursor in keys:
             self._place = keys.index(self.cursor)
         elif keys:
             self._place = min(self._place, len(keys) - 1)
@@ -80,14 +90,17 @@ class Pane(Lines, can_focus=True):
     def rows(self, width: int, height: int) -> Sequence[Row]:
         """The rows in view."""
         title = self.title_row(width)
-        self.settle([key for _, key in self.items(width) if key is not None])
         items = self.items(width)
+        before = self.cursor
+        self.settle([key for _, key in items if key is not None])
+        if self.cursor != before:
+            items = self.items(width)
         head = [*title, *self.fixed(width)]
         foot = list(self.below(width, height))
         room = max(1, height - len(head) - len(foot))
         here = next((place for place, (_, key) in enumerate(items) if key is not None and key == self.cursor), 0)
         self.scroll_into(here, items, room)
-        shown = [row for row, _ in items[self.top : self.top + room]]
+        shown = [row() if callable(row) else row for row, _ in items[self.top : self.top + room]]
         shown += [[] for _ in range(room - len(shown))]
         return [*head, *shown, *foot]
 
@@ -114,6 +127,7 @@ class Pane(Lines, can_focus=True):
         keys = self.keys()
         if keys:
             self.settle(keys)
+            self.touched = True
             self._place = min(max(self._place + by, 0), len(keys) - 1)
             self.cursor = keys[self._place]
             self.moved()
@@ -137,7 +151,7 @@ class Pane(Lines, can_focus=True):
         place = self.top + event.y - head
         items = self.items(width)
         if event.y >= head and place < len(items) and items[place][1] is not None:
-            self.cursor = items[place][1]
+            self.cursor, self.touched = items[place][1], True
             self.moved()
 
     def on_mouse_scroll_down(self, event: MouseScrollDown) -> None:

@@ -55,6 +55,8 @@ class RigPane(Pane):
         self.mark: Mark | None = None
         """How it is set by hand; None while it stands as planned."""
         self.shown: Rig | None = None
+        self._shown_as: Mark | None = None
+        """The setting by hand that `shown` is of."""
         self.trouble = ""
         self._parts: dict[str, int] = {}
 
@@ -217,7 +219,7 @@ class RigPane(Pane):
         if isinstance(rig, str):
             self.trouble = rig
         else:
-            self.shown, self.trouble = rig, ""
+            self.shown, self.trouble, self._shown_as = rig, "", mark
 
     def action_shift(self, steps: int) -> None:
         """Move the camera away from the part or towards it."""
@@ -232,7 +234,8 @@ class RigPane(Pane):
         if self.base is None or self.shown is None:
             return
         stops = stops_of(self.base)
-        place = min(range(len(stops)), key=lambda place: abs(stops[place] - self.shown.stop))  # type: ignore[union-attr]
+        now = self.mark.stop if self.mark and self.mark.stop is not None else self.shown.stop
+        place = min(range(len(stops)), key=lambda place: abs(stops[place] - now))
         other = min(max(place + by, 0), len(stops) - 1)
         if other == place:
             self.app.tell("The lens has no stop beyond that.")
@@ -262,6 +265,8 @@ class RigPane(Pane):
             return
         mark = self.mark or Mark(self.base.camera, self.base.lens)
         self.state.mark(mark)
+        if self.shown and mark == self._shown_as:
+            self.state.results.rigs[mark] = self.shown
         on = any(replace(one, note="") == mark for one in self.state.work.marks)
         self.app.tell(f"{'Kept' if on else 'Taken off'}; {len(self.state.work.marks)} on the shortlist (4).")
         self.app.marks_changed()

@@ -22,7 +22,7 @@ class RigsPane(Pane):
     """The ranking under a cursor."""
 
     BINDINGS: ClassVar[list[BindingType]] = [
-        Binding("enter", "choose", "look at / take"),
+        Binding("enter", "choose", "look at it, or take it"),
         Binding("space", "mark", "mark"),
         Binding("o", "order", "order"),
         Binding("slash", "filter", "filter", key_display="/"),
@@ -31,6 +31,7 @@ class RigsPane(Pane):
     ]
     number = 2
     label = "Rigs"
+    first = True
 
     def __init__(self) -> None:
         super().__init__()
@@ -38,29 +39,40 @@ class RigsPane(Pane):
         self.entry: Entry | None = None
         """The filter while it is being typed."""
         self.misses = True
-        self._fitting: Table | None = None
-        self._missing: Table | None = None
+        self._tables: tuple[tuple | None, Table | None, Table | None] = (None, None, None)
+        """What the tables were made of, and the tables."""
 
     def items(self, width: int) -> list[Item]:
         """Concessions, rigs that fit, nearest misses."""
         results = self.state.results
         ranking = results.ranking
-        fitting, missing = shown_rigs(ranking, self.words, self.misses or not (ranking and ranking.fitting))
+        fitting, missing = self._shown_tables(width)
         items: list[Item] = []
         if ranking and not ranking.fitting:
             items += self._concessions(width)
         if fitting:
-            table = Table(fitting, self.state, width)
-            items.append((table.head(), None))
-            items += [self._rig(table, place) for place in range(len(fitting))]
+            items += [self._rig(fitting, place) for place in range(len(fitting.rigs))]
         elif ranking and ranking.fitting:
             items.append(([("   No rig that fits holds these words.", "dim")], None))
         if missing:
-            table = Table(missing, self.state, width)
             title = "nearest misses" if not fitting else "misses"
-            items += [([], None), (fit([(f"   {title}", "head")], width), None), (table.head(), None)]
-            items += [self._rig(table, place) for place in range(len(missing))]
+            items += [([], None), (fit([(f"   {title}", "head")], width), None), *self._inline(missing, fitting)]
+            items += [self._rig(missing, place) for place in range(len(missing.rigs))]
         return items
+
+    def _inline(self, missing: Table, fitting: Table | None) -> list[Item]:
+        """The misses' own head, where the one that stays on top is that of the rigs that fit."""
+        return [(missing.head(), None)] if fitting and (self.rig is None or self.rig.fits) else []
+
+    def _shown_tables(self, width: int) -> tuple[Table | None, Table | None]:
+        """Rigs that fit and rigs that don't, laid out anew only where something has changed."""
+        ranking = self.state.results.ranking
+        made_of = (ranking, self.words, self.misses, width)
+        if self._tables[0] is None or any(one is not other for one, other in zip(self._tables[0], made_of)):
+            both = shown_rigs(ranking, self.words, self.misses or not (ranking and ranking.fitting))
+            tables = (Table(rigs, self.state, width) if rigs else None for rigs in both)
+            self._tables = made_of, *tables
+        return self._tables[1], self._tables[2]
 
     def _concessions(self, width: int) -> list[Item]:
         given = self.state.results.concessions
@@ -68,7 +80,7 @@ class RigsPane(Pane):
             return [([("   Nothing fits. Working out what would have to give …", "head")], None)]
         if not given:
             return [([("   Nothing fits, and no change of one demand alone lets a rig fit.", "head")], None)]
-        title = "   Nothing fits. Any one of these would let a rig fit; Enter takes it into the brief:"
+        title = "   Nothing fits. Each of these alone would let a rig fit; Enter takes one:"
         return [([(title, "head")], None)] + [
             (concession_row(self.state, one, width, Given(one) == self.cursor), Given(one)) for one in given
         ]
@@ -76,7 +88,7 @@ class RigsPane(Pane):
     def _rig(self, table: Table, place: int) -> Item:
         rig = table.rigs[place]
         key = (rig.camera, rig.lens)
-        return table.row(place, key == self.cursor, self.state.marked(key)), key
+        return (lambda: table.row(place, key == self.cursor, self.state.marked(key))), key
 
     @property
     def rig(self) -> Rig | None:
@@ -87,16 +99,19 @@ class RigsPane(Pane):
 
     def fixed(self, width: int) -> list[Row]:
         """Order and filter."""
+        fitting, missing = self._shown_tables(width)
+        rig = self.rig
+        table = missing if (rig and not rig.fits) or not fitting else fitting
+        head = [table.head()] if table else []
         order = self.app.order
         if self.entry is not None:
-            return [
-                [("   filter ", "strong"), *self.entry.row(min(40, width - 40)), ("  Enter keeps, Esc drops", "dim")]
-            ]
+            typed = self.entry.row(min(40, width - 40))
+            return [[("   filter ", "strong"), *typed, ("  Enter keeps, Esc drops", "dim")], *head]
         left: Row = [("   by ", "dim"), (order, "strong"), (f": {ORDERS[order]}", "dim")]
         right: Row = [(f"filter: {self.words} (Esc drops it) ", "pinch")] if self.words else []
         if not self.misses:
             right = [*right, ("misses hidden ", "dim")]
-        return [ends(left, right, width)]
+        return [ends(left, right, width), *head]
 
     def hint(self) -> str:
         """The whole of what the row may have cut."""
@@ -118,6 +133,12 @@ class RigsPane(Pane):
                 f"{pinch_words(rig)}{doubt}."
             )
         return f"{name}, {price}, misses {'; '.join(misses(rig, system))}."
+
+    def word(self, binding: Binding) -> str:
+        """Enter does one thing or the other."""
+        if binding.action == "choose":
+            return "take it" if isinstance(self.cursor, Given) else "look at"
+        return super().word(binding)
 
     def moved(self) -> None:
         """Let the rig view follow, and fetch more of the ranking near its end."""

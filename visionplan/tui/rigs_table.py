@@ -9,7 +9,7 @@ from visionplan.report.concession import concession_change, concession_sentence
 from visionplan.report.remarks import pair
 from visionplan.solve.rig import Concession, Ranking, Rig
 from visionplan.text import clean
-from visionplan.tui.rows import Row, cell, fit
+from visionplan.tui.rows import Row, cell
 from visionplan.tui.state import State
 
 GRADE_ROLE = {"comfortable": "good", "fair": "fair", "tight": "tight", None: "missed"}
@@ -99,17 +99,21 @@ def counts(state: State) -> str:
     return f"{ranking.fitting:,} of {ranking.pairs:,} pairs fit"
 
 
+def _rule(text: str, width: int) -> Row:
+    return [(f"─── {text} ".ljust(width, "─"), "dim")]
+
+
 def preview(state: State, width: int, height: int) -> list[Row]:
     """The first of the ranking in few rows, under another view."""
-    rows: list[Row] = [fit([("─── first of the ranking " + "─" * width, "dim")], width)]
+    rows: list[Row] = [_rule("first of the ranking", width)]
     ranking = state.results.ranking
     fitting, misses = shown_rigs(ranking, "", True)
     if ranking and not fitting and state.results.concessions:
-        rows = [fit([("─── nothing fits: what would have to give (view 2 takes one) " + "─" * width, "dim")], width)]
+        rows = [_rule("nothing fits: what would have to give (view 2 takes one)", width)]
         rows += [concession_row(state, given, width, False) for given in state.results.concessions[: height - 1]]
     elif rigs := fitting or misses:
         if not fitting:
-            rows = [fit([("─── nothing fits: nearest misses " + "─" * width, "dim")], width)]
+            rows = [_rule("nothing fits: nearest misses", width)]
         table = Table(rigs[: height - 2], state, width)
         rows.append(table.head())
         rows += [table.row(place, False, state.marked(_pair(rig))) for place, rig in enumerate(rigs[: height - 2])]

@@ -67,11 +67,9 @@ class ShortlistPane(Pane):
         if not marks:
             return []
         own, places = self._columns(width)
-        count = (
-            f"{len(marks)} on the shortlist"
-            if len(places) == len(marks)
-            else f"{places[0] + 1}–{places[-1] + 1} of {len(marks)}  ←→"
-        )
+        count = f"{len(marks)} on the shortlist"
+        if len(places) < len(marks):
+            count = f"{places[0] + 1}–{places[-1] + 1} of {len(marks)}  ←→"
         cameras: Row = [cell(count, _NAMES, "dim")]
         lenses: Row = [cell("", _NAMES)]
         outcomes: Row = [cell("* best of its row", _NAMES, "dim")]
@@ -128,10 +126,13 @@ class ShortlistPane(Pane):
             return f"A note to {pair(mark.camera, mark.lens)}. Enter keeps it, Esc drops it."
         if not isinstance(rig, Rig):
             return f"{pair(mark.camera, mark.lens)}: {rig or 'being judged'}."
-        found = {name: texts for name, texts, _ in compared([Listed(rig)], self.state.brief.units)}
-        value = f"{self.cursor}: {found[str(self.cursor)][0]}. " if str(self.cursor) in found else ""
+        rows = compared(self.listed(), self.state.brief.units)
+        place = [one for _, one in shortlist if isinstance(one, Rig)].index(rig)
+        best = ", ".join(name for name, _, top in rows if place in top)
+        told = f"Best here in {best}. " if best else ""
+        value = next((f"{name}: {texts[place]}. " for name, texts, _ in rows if name == self.cursor), "")
         note = f" Note: {clean(mark.note)}" if mark.note else ""
-        return f"{value}{limits(rig)}.{note}"
+        return f"{value}{told}{limits(rig).capitalize()}.{note}"
 
     def action_turn(self, by: int) -> None:
         """Go to the next rig."""

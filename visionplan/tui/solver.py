@@ -81,10 +81,10 @@ class Solver:
                 self._waiting.pop(kind, None)
 
     @property
-    def busy(self) -> bool:
-        """Whether anything waits or is under way."""
+    def under_way(self) -> frozenset[str]:
+        """The kinds of requests that wait or are being worked out."""
         with self._change:
-            return bool(self._waiting) or self._doing is not None
+            return frozenset(self._waiting) | ({self._doing.kind} if self._doing else set())
 
     def close(self) -> None:
         """Let the thread end after what it is doing."""

@@ -124,6 +124,9 @@ class Solving:
         self._ranked, self.slow = state.generation, False
         ranking = answer.ranking
         assert ranking
+        before = state.results.ranking
+        if before is None or bool(before.fitting) != bool(ranking.fitting):
+            self.rigs.touched = False  # type: ignore[attr-defined]
         tolls, of = state.results.tolls, state.results.tolls_of
         state.results = Results(ranking, None if not ranking.fitting else (), tolls, of)
         if not ranking.fitting:

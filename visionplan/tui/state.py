@@ -331,4 +331,9 @@ class State:
 
     def shortlist(self) -> list[tuple[Mark, Rig | str | None]]:
         """The marked rigs, each judged, or why it can't be, or None while it isn't yet."""
-        return [(mark, self.results.rigs.get(replace(mark, note=""))) for mark in self.work.marks]
+        ranking = self.results.ranking
+        ranked = {(rig.camera, rig.lens): rig for rig in (ranking.rigs if ranking else ())}
+        return [
+            (mark, self.results.rigs.get(replace(mark, note=""), ranked.get(mark.pair) if mark.planned else None))
+            for mark in self.work.marks
+        ]

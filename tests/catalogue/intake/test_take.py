@@ -150,24 +150,20 @@ decimal = "."
 
 def test_every_row_at_fault_is_listed_with_line_and_heading(intake):
     rows = [*LENSES, [], ["A16", "C", "-16", "1,4", "0.1", "USD 5", "x"], ["", "C", "16", "1,4-16", "0,1", "5", "1"]]
-    faults = intake.refused(intake.sheet(rows))
-    assert {(fault.line, fault.column) for fault in faults} == {
-        (5, "Blende"),
-        (5, "MOD [m]"),
-        (5, "Preis [EUR]"),
-        (6, "Artikel"),
-    }
-    rows[4][3:6] = "1,4-16", "0,1", "5"
-    faults = intake.refused(intake.sheet(rows))
+    sheet = intake.sheet(rows)
+    faults = intake.refused(sheet)
     assert {(fault.line, fault.column) for fault in faults} == {
         (5, "Artikel"),
         (5, "Brennweite (mm)"),
+        (5, "Blende"),
+        (5, "MOD [m]"),
+        (5, "Preis [EUR]"),
         (5, "Bestand"),
         (6, "Artikel"),
     }
     assert "line 2" in next(fault.found for fault in faults if (fault.line, fault.column) == (5, "Artikel"))
-    assert all(fault.file.endswith("sheet.csv") for fault in faults)
-    ((merged,), skipped) = intake.take(intake.sheet(rows), skip_bad=True)
+    assert all(fault.file == sheet for fault in faults)
+    ((merged,), skipped) = intake.take(sheet, skip_bad=True)
     assert merged.added == ["A16", "A25"]
     assert set(skipped) == set(faults)
 
@@ -278,9 +274,7 @@ def test_a_hundred_thousand_rows(intake):
     rows = [LENSES[0], *([f"A{k}", "C", str(5 + k % 95), "1,4 - 16", "0,5", str(k), "1"] for k in range(100_000))]
     ((merged,), _) = intake.take(intake.sheet(rows))
     assert len(merged.added) == 100_000
-    rows[-1][-2] = "1"
-    ((merged,), _) = intake.take(intake.sheet(rows))
-    assert (len(merged.updated), merged.same) == (1, 99_999)
+    assert intake.lenses()["price"].tolist() == list(range(100_000))
 
 
 @pytest.mark.skipif(not os.path.isdir("/proc/self"), reason="needs a folder that not even root can write to")

@@ -157,9 +157,10 @@ class _Reader:
             meant = nearest(name, ours)
             hint = f" (is '{meant}' meant?)" if meant else ""
             self.fault(key, f"{quoted(name)} is no column of ours{hint}", f"one of {', '.join(ours)}")
-        elif taken.setdefault(name, by) != by or list(taken).count(name) > 1:
+        elif name in taken:
             self.fault(key, f"'{name}' is taken from {taken[name]} already", "each column of ours once")
         else:
+            taken[name] = by
             return True
         return False
 

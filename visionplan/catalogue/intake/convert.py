@@ -48,7 +48,8 @@ def _convert(text: str, column: Column, source: Source, sheet_map: SheetMap, pla
     if column.kind == "stops":
         return " ".join(_decimal(word, sheet_map, plain) for word in re.split(r"[\s;/]+", text) if word)
     if column.kind not in ("number", "count"):
-        return csv_cell(text)
+        word = text.casefold()
+        return word if word in column.choices else csv_cell(text)
     if column.currency:
         text = _without_currency(text, source.unit)
     if column.name in _BOUNDS:

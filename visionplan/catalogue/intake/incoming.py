@@ -12,7 +12,7 @@ from visionplan.catalogue.intake.convert import converter
 from visionplan.catalogue.intake.sheet import Figure, Row, Sheet
 from visionplan.catalogue.items import COLUMNS, Table
 from visionplan.catalogue.ledger import Ledger
-from visionplan.catalogue.read import read_table
+from visionplan.catalogue.read import read_table, without
 from visionplan.faults import Fault, InputError
 from visionplan.text import quoted
 from visionplan.units import UnitError
@@ -51,24 +51,31 @@ def read_incoming(sheet: Sheet, sheet_map: SheetMap, map_file: str) -> Incoming:
 
     written = Ledger(sheet.file)
     table = read_table(_as_file(units, cells, sheet_map.heading), sheet_map.item, written)
-    faults = _readdress(ledger.faults(), places, sheet, {})
-    if written.fatal or table is None:
-        raise InputError(faults if not cells and faults else _unsuited(written.faults(), sheet_map.item, map_file))
-    fixed = {fault.column for fault in written.faults()} & sheet_map.fixed.keys()
-    if fixed:
-        first = {fault.column: fault for fault in reversed(written.faults()) if fault.column in fixed}
-        raise InputError(
-            [
-                Fault(map_file, one.found, one.expected, column=f"{sheet_map.item}.fixed.{name}")
-                for name, one in first.items()
-            ]
-        )
+    if table is None or written.fatal:
+        raise InputError(_unsuited(written.faults(), sheet_map.item, map_file))
     theirs = {column.name: source.heading for source in sheet_map.sources for column in source.columns}
-    faults += _readdress(written.faults(), places, sheet, theirs)
+    _check_fixed(written.faults(), sheet_map, map_file)
+    faults = ledger.faults()
+    for fault in written.faults():
+        heading = theirs.get(fault.column.partition(" [")[0], fault.column)
+        if fault.line is None or not ledger.knows(fault.line, heading):
+            faults.append(replace(fault, column=heading))
+    faults = [_readdressed(fault, places, sheet) for fault in faults]
     faults.sort(key=lambda fault: fault.line or 2**31)
+    table = without(ledger.bad, table)
     if faults and not len(table):
         raise InputError(faults)
     return Incoming(table, units, cells, tuple(faults))
+
+
+def _check_fixed(faults: Sequence[Fault], sheet_map: SheetMap, map_file: str) -> None:
+    """A fault of a cell that all rows have is the map's."""
+    fixed = {fault.column: fault for fault in reversed(faults) if fault.column in sheet_map.fixed}
+    if fixed:
+        where = f"{sheet_map.item}.fixed"
+        raise InputError(
+            [Fault(map_file, one.found, one.expected, column=f"{where}.{name}") for name, one in fixed.items()]
+        )
 
 
 def _headings(rows: Iterator[Row], sheet: Sheet, sheet_map: SheetMap, map_file: str) -> list[str]:
@@ -110,7 +117,7 @@ def _converted(
     count: int,
     ledger: Ledger,
 ) -> Iterator[tuple[int, list[str]]]:
-    """The rows whose cells can be read, as cells of ours."""
+    """The rows as cells of ours, those that can't be read left empty and noted."""
     order = {name: at for at, name in enumerate(units)}
     blank = [""] * len(order)
     for name, cell in sheet_map.fixed.items():
@@ -135,8 +142,7 @@ def _converted(
                 continue
             for place, value in zip(slot, values):
                 row[place] = value
-        if number not in ledger.bad:
-            yield number, row
+        yield number, row
 
 
 class _Memo:
@@ -177,16 +183,11 @@ def titled(name: str, unit: str) -> str:
     return f"{name} [{unit}]" if unit else name
 
 
-def _readdress(faults: Sequence[Fault], places: dict[str, int], sheet: Sheet, theirs: dict[str, str]) -> list[Fault]:
-    """Put the sheet's headings and, of a workbook, the address of the cell in the place of our headings."""
-    readdressed = []
-    for fault in faults:
-        heading = theirs.get(fault.column.partition(" [")[0], fault.column)
-        if sheet.worksheet and heading in places:
-            address = f"{sheet.column(places[heading])}{fault.line or ''}"
-            heading = f"{address} {heading}" if fault.line else heading
-        readdressed.append(replace(fault, column=heading))
-    return readdressed
+def _readdressed(fault: Fault, places: dict[str, int], sheet: Sheet) -> Fault:
+    """Say the address of a workbook's cell, in place of its heading alone."""
+    if not sheet.worksheet or not fault.line or fault.column not in places:
+        return fault
+    return replace(fault, column=f"{sheet.column(places[fault.column])}{fault.line} {fault.column}")
 
 
 def _unsuited(faults: Sequence[Fault], item: str, map_file: str) -> list[Fault]:

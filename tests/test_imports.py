@@ -22,6 +22,8 @@ HELP = [
     ("concede", "--help"),
     ("catalogue", "--help"),
     ("catalogue", "check", "--help"),
+    ("catalogue", "map", "--help"),
+    ("catalogue", "take", "--help"),
     ("new", "--help"),
     ("completion", "--help"),
     ("polish",),

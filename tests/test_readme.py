@@ -77,8 +77,8 @@ def test_every_dependency_has_its_reason():
     with open(ROOT / "pyproject.toml", "rb") as file:
         project = tomllib.load(file)["project"]
     extras = project["optional-dependencies"]
-    wanted = [
+    wanted = {
         re.match(r"[\w-]+", one)[0] for one in [*project["dependencies"], *(o for e in extras.values() for o in e)]
-    ]
+    }
     told = [name for cell in first_cells(DEVELOPERS, "## Dependencies") for name in cell.split(", ")]
     assert sorted(told) == sorted(wanted)

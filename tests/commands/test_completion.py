@@ -21,7 +21,7 @@ def test_a_script_for_each_shell_knows_commands_and_options(command, shell):
     ("words", "expected"),
     [
         (["ra"], {"rank"}),
-        (["catalogue", ""], {"check"}),
+        (["catalogue", ""], {"check", "map", "take"}),
         (["rank", "--ord"], {"--order"}),
         (["rank", "--order", "la"], {"latitude"}),
         (["explain", "cel"], {"cell.toml"}),

@@ -44,7 +44,7 @@ def _add_map(actions) -> None:
         description="Guess which columns of a sheet are which of ours, by heading, unit and what they hold, and print "
         "the map: visionplan catalogue map SHEET > MAP. Look it over before you take the sheet in.",
     )
-    parser.add_argument("sheet", metavar="FILE", help="a CSV file or an XLSX workbook")
+    parser.add_argument("sheet", metavar="SHEET", help="a CSV file or an XLSX workbook")
     parser.add_argument("--item", choices=ITEMS, help="what the rows are; guessed if not said")
     parser.add_argument("--heading", metavar="ROW", type=count, default=0, help="row of the headings; guessed")
     parser.add_argument("--worksheet", metavar="NAME", help="sheet of the workbook; all that look like items")
@@ -60,7 +60,7 @@ def _add_take(actions) -> None:
         description="Take a sheet into a catalogue through its column map. New ids are added; of known ones price, "
         "stock and quantity are updated, and what else differs is told. All files are written or none.",
     )
-    parser.add_argument("sheet", metavar="FILE", help="a CSV file or an XLSX workbook")
+    parser.add_argument("sheet", metavar="SHEET", help="a CSV file or an XLSX workbook")
     parser.add_argument("map", metavar="MAP", help="its column map, as 'catalogue map' starts it")
     parser.add_argument("folder", metavar="DIR", help="the catalogue's folder; made if there is none")
     parser.add_argument("--all", action="store_true", help="update everything that the sheet states of known ids")

@@ -25,7 +25,7 @@ def run(args: argparse.Namespace) -> int:
 
     from visionplan.commands.console import results
 
-    files = {"BRIEF": shtab.FILE, "FILE": shtab.FILE, "DIR": shtab.DIRECTORY}
+    files = {"BRIEF": shtab.FILE, "FILE": shtab.FILE, "SHEET": shtab.FILE, "MAP": shtab.FILE, "DIR": shtab.DIRECTORY}
     for action in _actions(args.parser):
         if action.metavar in files:
             action.complete = files[action.metavar]

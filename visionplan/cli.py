@@ -5,12 +5,12 @@ from collections.abc import Sequence
 from typing import NoReturn
 
 from visionplan import __version__
-from visionplan.commands import asbuilt, catalogue, completion, concede, console, explain, new, rank, sheet
+from visionplan.commands import asbuilt, catalogue, completion, concede, console, explain, interface, new, rank, sheet
 from visionplan.faults import InputError
 from visionplan.text import clean
 
-COMMANDS = (rank, explain, sheet, asbuilt, concede, catalogue, new, completion)
-"""In the order that the help lists them; without one of them the help is printed."""
+COMMANDS = (interface, rank, explain, sheet, asbuilt, concede, catalogue, new, completion)
+"""In the order that the help lists them; without one of them the interface opens, off a terminal the help is printed."""
 
 _STATUS = """\
 exit status:
@@ -79,6 +79,8 @@ def run(arguments: Sequence[str]) -> int:
 
 def _run(arguments: Sequence[str]) -> int:
     top = parser()
+    if not arguments and interface.interactive():
+        arguments = ["open"]
     try:
         args = top.parse_args(arguments)
     except SystemExit as end:

@@ -65,7 +65,7 @@ class PlanApp(Filing, Solving, App[None]):
         Binding("question_mark", "help", "help", show=False),
         Binding("colon,ctrl+p", "palette", "every action by name", show=False),
         Binding("escape", "stop", "stop a slow ranking", show=False),
-        Binding("q,ctrl+q", "leave", "quit"),
+        Binding("q,ctrl+q,ctrl+c", "leave", "quit", key_display="q"),
     ]
 
     def __init__(

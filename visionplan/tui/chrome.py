@@ -22,7 +22,7 @@ class Head(Lines):
     """The work's title and how many pairs fit; under it the views, as stations of a scale."""
 
     DEFAULT_CSS = "Head { height: 2; }"
-    app: "PlanApp"  # type: ignore[assignment]
+    app: "PlanApp"
 
     def rows(self, width: int, height: int) -> Sequence[Row]:
         """Both rows."""
@@ -69,7 +69,7 @@ class Foot(Lines):
     """What was just said, else a hint, in two rows; under it the keys of the view."""
 
     DEFAULT_CSS = "Foot { height: 3; }"
-    app: "PlanApp"  # type: ignore[assignment]
+    app: "PlanApp"
 
     def rows(self, width: int, height: int) -> Sequence[Row]:
         """Hint and keys."""

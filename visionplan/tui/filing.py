@@ -180,7 +180,7 @@ class Filing:
         """Write the brief to another file."""
         start = self.state.work.path or free_name(Path.cwd(), "brief", ".toml")
         page = PathPage("Save the brief as", start, "A TOML file. It becomes the brief's own file.", suffix=".toml")
-        self.push_screen(page, lambda path: path and self._unless_there(path, lambda: self._save(path, then)))
+        self.push_screen(page, lambda path: self._unless_there(path, lambda: self._save(path, then)))
 
     def _save(self, path: str, then: Callable[[], None] | None = None) -> None:
         if not path and not self.may_change():  # type: ignore[attr-defined]
@@ -195,8 +195,10 @@ class Filing:
                 then()
         self.redraw()
 
-    def _unless_there(self, path: str, write: Callable[[], None]) -> None:
-        """Write, but ask first where a file is there already."""
+    def _unless_there(self, path: str | None, write: Callable[[], None]) -> None:
+        """Write, but ask first where a file is there already; nothing where no name was given."""
+        if not path:
+            return
         if not os.path.lexists(path) or os.path.abspath(path) == self.state.work.path:
             write()
             return
@@ -243,7 +245,7 @@ class Filing:
         suffix = FORMATS[form][0]
         folder = Path(self.state.work.path).parent if self.state.work.path else Path.cwd()
         page = PathPage("Export to", free_name(folder, "shortlist", suffix), "The file's name.", suffix=suffix)
-        self.push_screen(page, lambda path: path and self._unless_there(path, lambda: self._export(form, path)))
+        self.push_screen(page, lambda path: self._unless_there(path, lambda: self._export(form, path)))
 
     def _export(self, form: str, path: str) -> None:
         text = self.shortlist_text(form)

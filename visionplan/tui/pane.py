@@ -44,7 +44,7 @@ class Pane(Lines, can_focus=True):
         self.touched = False
         """Whether the cursor was moved by hand; else it stays on the first row."""
 
-    app: "PlanApp"  # type: ignore[assignment]
+    app: "PlanApp"
 
     @property
     def state(self) -> "State":

@@ -70,8 +70,8 @@ class RigsPane(Pane):
         made_of = (ranking, self.words, self.misses, width)
         if self._tables[0] is None or any(one is not other for one, other in zip(self._tables[0], made_of)):
             both = shown_rigs(ranking, self.words, self.misses or not (ranking and ranking.fitting))
-            tables = (Table(rigs, self.state, width) if rigs else None for rigs in both)
-            self._tables = made_of, *tables
+            fitting, missing = (Table(rigs, self.state, width) if rigs else None for rigs in both)
+            self._tables = made_of, fitting, missing
         return self._tables[1], self._tables[2]
 
     def _concessions(self, width: int) -> list[Item]:

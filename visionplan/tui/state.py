@@ -98,13 +98,15 @@ class State:
         journal = self.journal if self.journal.file.stem == key_of(path) else Journal(self.folder, key_of(path))
         writable = journal.lock()
         data = journal.read()
-        work, past, future, left_off, outside = fresh, (), (), False, False
+        work, left_off, outside = fresh, False, False
+        past: tuple[Step, ...] = ()
+        future: tuple[Step, ...] = ()
         if data:
             try:
                 old, past, future = unpack(data)
                 brief = parse_brief(old.text, old.path)
             except (ValueError, KeyError, TypeError, IndexError, InputError):
-                past = future = ()
+                past, future = (), ()
             else:
                 del brief
                 work = replace(old, catalogue=catalogue or old.catalogue)

@@ -60,7 +60,7 @@ def test_map_then_take(command, tmp_path):
     assert status == 0
     assert "1 updated" in out
     assert "A25: price 399.00 → 419.00" in out
-    assert "A16: nearest object 0.1 → sheet 0.2" in out
+    assert "A16: nearest object 0.1, in the sheet 0.2" in out
     assert "1 updated" in command("catalogue", "take", "sheet.csv", "map.toml", "parts", "--all")[1]
 
 
@@ -101,3 +101,4 @@ def test_several_folders(command, tmp_path):
     err = command.refused("rank", command.jar_lids, *folders)
     assert "more/lenses.csv:2 [id]" in err
     assert "works/lenses.csv:2 already" in err
+    assert command.refused("catalogue", "check", "works", "more") == err

@@ -33,7 +33,12 @@ def _add_check(actions) -> None:
         help="read a catalogue and tell everything that is wrong with it",
         description="Read a catalogue and tell everything that is wrong with it, with file, line and column.",
     )
-    check.add_argument("folder", metavar="DIR", help="folder with lenses.csv, cameras.csv and perhaps spacers.csv")
+    check.add_argument(
+        "folders",
+        metavar="DIR",
+        nargs="+",
+        help="folder with lenses.csv, cameras.csv and perhaps spacers.csv; several make one catalogue",
+    )
     check.set_defaults(run=run_check)
 
 
@@ -70,15 +75,15 @@ def _add_take(actions) -> None:
 
 def run_check(args: argparse.Namespace) -> int:
     """0 when nothing is wrong; what is wrong is raised."""
-    from visionplan.catalogue.folder import read_catalogue
+    from visionplan.catalogue.folder import read_catalogues
     from visionplan.commands.console import complain, results
     from visionplan.text import clean
 
-    catalogue = read_catalogue(args.folder)
+    catalogue = read_catalogues(args.folders)
     complain(*catalogue.warnings)
     tables = (catalogue.lenses, catalogue.cameras, catalogue.spacers)
     counts = ", ".join(f"{len(table):,} {table.item}" for table in tables)
-    results(f"{clean(args.folder)}: {counts}, nothing wrong\n{catalogue.fingerprint}\n")
+    results(f"{clean(', '.join(args.folders))}: {counts}, nothing wrong\n{catalogue.fingerprint}\n")
     return 0
 
 
@@ -115,20 +120,20 @@ def _told(merged: "Merged") -> list[str]:
     counts = f"{len(merged.added):,} added, {updated:,} updated, {merged.same:,} the same"
     absent = f", {merged.absent:,} not in the sheet and left as they are" if merged.absent else ""
     lines = [f"{clean(merged.file)}: {counts}{absent}"]
-    lines += _changes(merged.updated, "")
+    lines += _changes(merged.updated, " → ")
     if merged.kept:
         lines.append(
             f"{len({change.id for change in merged.kept}):,} differ otherwise and were left; --all updates them too:"
         )
-        lines += _changes(merged.kept, "sheet ")
+        lines += _changes(merged.kept, ", in the sheet ")
     return lines
 
 
-def _changes(changes: Sequence["Change"], there: str) -> list[str]:
+def _changes(changes: Sequence["Change"], between: str) -> list[str]:
     from visionplan.text import clean
 
     lines = [
-        f"  {clean(one.id)}: {one.column} {clean(one.before) or 'not stated'} → {there}{clean(one.after)}"
+        f"  {clean(one.id)}: {one.column} {clean(one.before) or 'not stated'}{between}{clean(one.after)}"
         for one in changes[:_MOST_TOLD]
     ]
     more = len(changes) - _MOST_TOLD

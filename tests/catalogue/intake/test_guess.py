@@ -118,6 +118,16 @@ def test_words_and_units_of_headings(heading, words, unit):
     assert split(heading) == (words, unit)
 
 
+def test_units_in_a_row_of_their_own(intake):
+    rows = [["Article", "Mount", "Length", "Price"], [], ["", "", "[cm]", "EUR"], ["R5", "C", "0.5", "7"]]
+    (guess,) = guess_file(sheet := intake.sheet(rows), "spacers")
+    assert mapping(guess)["Length"] == ("length", "cm")
+    assert guess.map.first == 4
+    ((merged,), _) = take(sheet, intake.map(map_text([guess])), str(intake.parts))
+    assert merged.table["length"].tolist() == [5]
+    assert merged.table.currency == "EUR"
+
+
 def test_units_that_do_not_suit_rule_a_column_out(intake):
     rows = [["Article", "Mount", "Length (g)", "Weight (mm)"], ["R", "C", "5", "6"]]
     (guess,) = guess_file(intake.sheet(rows), "spacers")

@@ -41,6 +41,8 @@ class SheetMap:
     sources: tuple[Source, ...]
     heading: int = 1
     """The row, or the line, with the headings."""
+    first: int = 0
+    """The row, or the line, where the items begin; 0 for the one after the headings."""
     worksheet: str = ""
     encoding: str = ""
     delimiter: str = ""
@@ -184,6 +186,10 @@ def _is_text(value: Any) -> bool:
     return isinstance(value, str) and bool(value.strip())
 
 
+def _is_row(value: Any) -> bool:
+    return isinstance(value, int) and not isinstance(value, bool) and value > 0
+
+
 def _is_sign(value: Any) -> bool:
     return isinstance(value, str) and len(value) == 1 and value not in '"\r\n\0'
 
@@ -197,10 +203,8 @@ def _are_words(value: Any) -> bool:
 
 
 _SETTINGS = {
-    "heading": (
-        lambda value: isinstance(value, int) and not isinstance(value, bool) and value > 0,
-        "the row with the headings, such as 1",
-    ),
+    "heading": (_is_row, "the row with the headings, such as 1"),
+    "first": (_is_row, "the row where the items begin, such as 3"),
     "worksheet": (_is_text, "the name of a worksheet"),
     "encoding": (_is_text, "an encoding such as 'windows-1252'"),
     "delimiter": (_is_sign, "one character such as ';'"),

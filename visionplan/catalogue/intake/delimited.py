@@ -97,6 +97,8 @@ def find_delimiter(text: str) -> str:
             counts = Counter(len(row) for row in islice(reader, _SAMPLE) if any(map(str.strip, row)))
         except csv.Error:
             continue
+        if not counts:
+            continue
         cells, rows = max(counts.items(), key=lambda pair: (pair[0] > 1, pair[1], pair[0]))
         score = (round(rows / counts.total(), 1), cells)
         if cells > 1 and score > best:
@@ -106,7 +108,8 @@ def find_delimiter(text: str) -> str:
 
 def _rows(path: str, text: str, delimiter: str) -> Iterator[Row]:
     csv.field_size_limit(2**31 - 1)
-    reader = csv.reader(io.StringIO(text, newline=""), delimiter=delimiter, strict=True, skipinitialspace=True)
+    source = io.StringIO(text, newline="")
+    reader = csv.reader(source, delimiter=delimiter, strict=True, skipinitialspace=delimiter != " ")
     line = 1
     try:
         for cells in reader:

@@ -49,6 +49,8 @@ def _section(guess: Guess) -> str:
     if settings.worksheet:
         lines.append(f"worksheet = {_quoted(settings.worksheet)}")
     lines.append(f"heading = {settings.heading}  # the row with the headings")
+    if settings.first:
+        lines.append(f"first = {settings.first}  # the row where the items begin")
     if settings.encoding:
         lines.append(f"encoding = {_quoted(settings.encoding)}")
     if settings.delimiter:

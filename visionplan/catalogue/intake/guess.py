@@ -11,7 +11,7 @@ from visionplan.catalogue.intake.convert import converter
 from visionplan.catalogue.intake.sheet import Row, Sheet, read_sheets, tidy
 from visionplan.catalogue.intake.signs import find_signs
 from visionplan.catalogue.intake.synonyms import PAIRS, SYNONYMS, USUAL_UNITS, WORDS
-from visionplan.catalogue.intake.wording import MONEY, likeness, plain, split
+from visionplan.catalogue.intake.wording import MONEY, is_unit, likeness, plain, split
 from visionplan.catalogue.items import COLUMNS, REQUIRED_OF_KIND, Column
 from visionplan.faults import Fault, InputError
 from visionplan.text import quoted
@@ -87,10 +87,22 @@ def guess(sheet: Sheet, item: str = "", heading: int = 0) -> Guess:
     items = [item] if item else list(COLUMNS)
     known = {at: max(_known(rows[at], one) for one in items) for at in tops}
     top = max(known, key=lambda at: (known[at], -at))
-    theirs, nothing = _columns(sheet, rows[top], rows[top + 1 :])
-    texts = [tidy(cell) for row in rows[top + 1 :] for cell in row.cells if type(cell) is str]
-    decimal, thousands = find_signs(texts)
-    settings = SheetMap("", (), rows[top].number, sheet.worksheet, "", sheet.delimiter, decimal, thousands, nothing)
+    units = _units_below(rows[top + 1 : top + 2])
+    below = rows[top + 1 + bool(units) :]
+    theirs, nothing = _columns(sheet, rows[top], units, below)
+    decimal, thousands = find_signs(tidy(cell) for row in below for cell in row.cells if type(cell) is str)
+    settings = SheetMap(
+        "",
+        (),
+        rows[top].number,
+        below[0].number if units and below else 0,
+        sheet.worksheet,
+        "",
+        sheet.delimiter,
+        decimal,
+        thousands,
+        nothing,
+    )
     guesses = {one: _guess(sheet, replace(settings, item=one), theirs) for one in items}
     best = max(guesses, key=lambda one: guesses[one][0])
     return guesses[best][1]
@@ -148,7 +160,15 @@ def _known(row: Row, item: str) -> int:
     return sum(word.replace(" ", "") in names for word in words)
 
 
-def _columns(sheet: Sheet, top: Row, below: Sequence[Row]) -> tuple[tuple[Theirs, ...], tuple[str, ...]]:
+def _units_below(rows: Sequence[Row]) -> dict[int, str]:
+    """By place: the units of a row that holds nothing else."""
+    cells = {at: tidy(cell).strip("[]()") for row in rows for at, cell in enumerate(row.cells) if cell.strip()}
+    return cells if all(map(is_unit, cells.values())) else {}
+
+
+def _columns(
+    sheet: Sheet, top: Row, units: dict[int, str], below: Sequence[Row]
+) -> tuple[tuple[Theirs, ...], tuple[str, ...]]:
     """The columns that hold anything, and what stands for nothing in them."""
     theirs, nothing = [], dict.fromkeys(EMPTY)
     for at, (name, cell) in enumerate(zip(sheet.headings(top.cells), top.cells)):
@@ -156,7 +176,8 @@ def _columns(sheet: Sheet, top: Row, below: Sequence[Row]) -> tuple[tuple[Theirs
         if cells or cell.strip():
             nothing |= {word: None for word in map(str.casefold, map(tidy, cells)) if word in _NOTHING}
             stated = tuple(cell for cell in cells if tidy(cell).casefold() not in _NOTHING)
-            theirs.append(Theirs(name, *split(tidy(cell)), stated))
+            words, unit = split(tidy(cell))
+            theirs.append(Theirs(name, words, unit or units.get(at, ""), stated))
     return tuple(theirs), tuple(nothing)
 
 

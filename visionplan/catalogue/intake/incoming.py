@@ -125,6 +125,8 @@ def _converted(
     targets = [(source, places[source.heading], _Memo(source, sheet_map)) for source in sheet_map.sources]
     slots = [[order[column.name] for column in source.columns] for source in sheet_map.sources]
     for number, cells, spoilt in rows:
+        if number < sheet_map.first:
+            continue
         if len(cells) > count and any(map(str.strip, cells[count:])):
             ledger.of_row(number, f"the row has {len(cells)} cells, the heading {count}", f"{count} cells")
             continue

@@ -38,6 +38,8 @@ def read_workbook(path: str, data: bytes) -> list[Sheet]:
     except zipfile.BadZipFile:
         raise InputError([Fault(path, "is broken: it can't be unpacked", SHEET)]) from None
     book = _open(path, data, data_only=False)
+    if not book.worksheets:
+        raise InputError([Fault(path, "has no worksheet", SHEET)])
     return [
         Sheet(f"{path} ({clean(sheet.title)})", _Rows(path, data, sheet), worksheet=sheet.title)
         for sheet in book.worksheets

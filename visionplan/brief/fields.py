@@ -215,6 +215,7 @@ LINES = (
     Line("choose.max_price", "number", "Highest price, in the catalogue's currency", "3000", PRICE),
     Line("choose.max_mass", "quantity", "Greatest mass of camera and lens together", '"600 g"', MASS),
     Line("choose.max_diameter", "quantity", "Greatest diameter of the lens", '"60 mm"', SIZE),
+    Line("choose.min_yield", "fraction", "Least share of the rigs built in which all must hold", '"95 %"', SHARE),
     Line("choose.lens_kinds", "names", "Kinds of lens", _BOTH_KINDS, choices=("entocentric", "telecentric")),
     Line("choose.in_hand", "yes", "Only what is in stock", "false"),
     Line("choose.cameras", "names", "Only these cameras, by id", '["id"]'),

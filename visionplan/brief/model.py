@@ -104,6 +104,8 @@ class Brief:
     """g"""
     max_diameter: float | None = None
     """mm"""
+    min_yield: float | None = None
+    """Least share of the rigs built, within their tolerances, in which every demand must hold."""
     lens_kinds: tuple[str, ...] | None = None
     in_hand: bool = False
     cameras: tuple[str, ...] | None = None

@@ -16,7 +16,7 @@ from visionplan.solve.demands import BY_NAME, asked_demands, judge
 from visionplan.solve.figures import electron_rate, longest_exposure
 from visionplan.solve.rig import Rig
 from visionplan.solve.stacks import MOST_RINGS
-from visionplan.solve.variant import variant, varied
+from visionplan.solve.variant import variant
 
 PLANES = 101
 """Heights between the part's top and bottom at which the focus is tried."""
@@ -52,7 +52,7 @@ def focus_plane(rig: Rig) -> Advice | None:
     if not brief.above + brief.below:
         return None
     heights = np.linspace(-brief.below, brief.above, PLANES).round(9)
-    room = _latitude(varied(case, z=heights, A=brief.above - heights, B=brief.below + heights))
+    room = _latitude(case.varied(z=heights, A=brief.above - heights, B=brief.below + heights))
     best = heights[int(np.argmax(room))]
     if np.isnan(room).all() or room.max() <= rig.latitude * (1 + span.TIE):
         best = case.z

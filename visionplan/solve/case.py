@@ -60,6 +60,9 @@ SYMBOLS: dict[str, tuple[str, str]] = {
 
 _OF_ASK = ("q", "A", "B", "z", "D", "beta", "beta_v", "v")
 
+_FOLLOWING = {"f": ("phi",), "p": ("psi",), "d": ("e",), "rings": ("e",)}
+"""Symbol → those that follow from it."""
+
 
 class Case:
     """One rig, or many at once, before the demands."""
@@ -76,6 +79,8 @@ class Case:
         self.lenses: Any = lenses
         self.least_contrast: Any = None
         """The least of the three contrasts, once it is worked out."""
+        self.share: Any = None
+        """The yield, once it is worked out; NaN where nothing is stated that may be off."""
         self.__dict__.update({name: getattr(self.ask, name) for name in _OF_ASK})
         self.lam, self.feature = self.brief.wavelength, self.brief.feature
         self.__dict__.update(given)
@@ -133,6 +138,14 @@ class Case:
         rings, y = (own[rows] if np.ndim(own) else own for own in (self.rings, self.y))
         cameras, lenses, N = self.cameras[rows], self.lenses[rows], self.N[rows, stops][:, None]
         return case_of(self.problem, arrangement, cameras, lenses, N=N, rings=rings, y=y)
+
+    def varied(self, **given: Any) -> "Case":
+        """This case with other values of some symbols, arrays that broadcast against the rest."""
+        other = Case(self.problem)
+        stale = {name for symbol in given for name in _FOLLOWING.get(symbol, ())}
+        other.__dict__.update({name: value for name, value in self.__dict__.items() if name not in stale})
+        other.__dict__.update(given)
+        return other
 
     def rows(self) -> list["Case"]:
         """Cases of one rig each, of scalars; only where every symbol is (rigs, 1) or the same for all."""

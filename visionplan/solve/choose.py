@@ -149,8 +149,8 @@ def _columns(
     fits = rigs.fits & (pair_code < MISSED)[:, None]
     stop = best_stop(rigs, fits)
     fit = fits.any(axis=1)
-    contrast = rigs.contrast(rows, stop)
-    code = np.maximum(np.maximum(pair_code, rigs.gates), contrast)
+    of_stop = rigs.stop_codes(rows, stop)
+    code = np.maximum(np.maximum(pair_code, rigs.gates), of_stop)
     arrangement = rigs.arrangement
     counted = np.zeros(len(rows), int)
     for here, stacks in problem.stacks_between(rigs.cameras, rigs.lenses, arrangement.cameras):
@@ -165,7 +165,7 @@ def _columns(
         "shortfall": np.where(fit, 0.0, rigs.short[rows, stop]),
         "grade": np.where(fit, span.grade(rigs.room, problem.brief.comfort)[rows, stop], len(span.GRADES)),
         "latitude": np.where(fit, rigs.room[rows, stop], 0.0),
-        "unknown": rigs.unknown | (contrast == UNKNOWN),
+        "unknown": rigs.unknown | (of_stop == UNKNOWN),
         "price": price(rigs.case)[:, 0],
         "count": np.full(len(rows), arrangement.cameras),
         "rings": counted,

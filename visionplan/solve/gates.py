@@ -117,6 +117,13 @@ def _stock_codes(case: Case):
     return np.maximum(_at_least(case.camera_stock, needed), _at_least(case.lens_stock, needed))
 
 
+def _yield_codes(case: Case):
+    """Unknown where the lens doesn't state its tolerance, but missed where it is too low without it."""
+    codes = _at_least(case.share, case.brief.min_yield)
+    vague = ~case.telecentric & np.isnan(case.focal_tolerance)
+    return np.where(vague & (codes == MET), UNKNOWN, codes)
+
+
 def _words(table: str, column: str) -> Callable[[Case], str]:
     def read(case: Case) -> str:
         row = case.cameras if table == "cameras" else case.lenses
@@ -331,6 +338,16 @@ GATES: tuple[Gate, ...] = (
         lambda case: case.least_contrast,
         "1",
         lines=("focus.min_contrast",),
+    ),
+    Gate(
+        "yield",
+        "stop",
+        _yield_codes,
+        lambda ask: ask.brief.min_yield is not None,
+        lambda case: case.brief.min_yield,
+        lambda case: case.share,
+        "1",
+        lines=("choose.min_yield",),
     ),
 )
 

@@ -15,7 +15,7 @@ from visionplan.solve.case import Case, case_of
 from visionplan.solve.demands import BY_NAME, MET, UNKNOWN, asked_demands
 from visionplan.solve.gates import asked_gates, judge_gate
 from visionplan.solve.problem import Problem
-from visionplan.solve.rigs import CONTRAST, Bounds, Rigs, rows_of
+from visionplan.solve.rigs import Bounds, Rigs, rows_of
 
 _TRAVEL, _HEADROOM = BY_NAME["travel"], BY_NAME["headroom"]
 
@@ -56,6 +56,7 @@ class Judge:
         self.problem = problem
         self.demands = asked_demands(problem.ask, drop)
         self.gates = asked_gates(problem.ask, drop)
+        self.stop_gates = tuple(gate for gate in self.gates if gate.of == "stop")
         self._lenses: dict[float, OfLens] = {}
 
     def of_lens(self, arrangement: Arrangement) -> "OfLens":
@@ -87,7 +88,7 @@ class Judge:
             source = self._possible(arrangement, lenses, of_pair)
             case, of_pair = self._bare(arrangement, cameras[source], lenses[source]), of_pair.take(source)
         of_lens, none = self.of_lens(arrangement), np.zeros(len(source), int)
-        whole = not self.problem.has_rings and CONTRAST not in self.gates and all(d.of != "rig" for d in self.demands)
+        whole = not self.problem.has_rings and not self.stop_gates and all(d.of != "rig" for d in self.demands)
         if whole:  # nothing more can come: what is possible fits
             unknown = rows_of(of_lens.bounds.unknown, case.lenses) | of_pair.unknown
             ends = None if all_stacks else of_lens.widest.take(case.lenses).both(of_pair)
@@ -113,7 +114,7 @@ class Judge:
             if gate.of == "pair":
                 codes = _flat(judge_gate(gate, case), len(gates))
                 gates, unknown = np.maximum(gates, codes), unknown | (codes == UNKNOWN)
-        return Rigs(arrangement, case, intersect, ends, stack, gates, unknown, source, CONTRAST in self.gates)
+        return Rigs(arrangement, case, intersect, ends, stack, gates, unknown, source, self.stop_gates)
 
     def _bare(self, arrangement: Arrangement, cameras: np.ndarray, lenses: np.ndarray) -> Case:
         none = np.zeros((len(cameras), 1))

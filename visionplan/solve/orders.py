@@ -9,7 +9,6 @@ from visionplan.solve.case import Case
 from visionplan.solve.checks import far_depth, near_depth
 from visionplan.solve.figures import signal_to_noise_at
 from visionplan.solve.rigs import Rigs
-from visionplan.solve.tolerance import shares
 
 
 @dataclass(frozen=True)
@@ -37,7 +36,7 @@ ORDERS: dict[str, Order | None] = {
     "snr": Order(_at_point(signal_to_noise_at), -1, ("eta", "variance", "saturation")),
     "price": None,
     "sampling": Order(_at_point(lambda case, m: case.P / m), 1),
-    "yield": Order(shares, -1),
+    "yield": Order(lambda rigs: rigs.share, -1),
     "length": Order(_at_point(lambda case, m: case.length(m)), 1, ("camera_length",)),
 }
 """Name → its figure. value goes by grade, then what is known, then price, then latitude; price by the price."""

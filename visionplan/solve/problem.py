@@ -188,6 +188,7 @@ def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
         "detail": table["detail limit"],
         "lens_length": length,
         "lens_diameter": table["diameter"],
+        "focal_tolerance": table["focal tolerance"],
         "distortion": table["distortion"],
         "circle": table["image circle"],
         "lens_mass": table["mass"],

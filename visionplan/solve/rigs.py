@@ -11,9 +11,8 @@ from visionplan.solve.ask import Arrangement
 from visionplan.solve.case import Case
 from visionplan.solve.demands import MET, MISSED, UNKNOWN, Demand, judge
 from visionplan.solve.figures import contrasts
-from visionplan.solve.gates import GATES, judge_gate
-
-CONTRAST = next(gate for gate in GATES if gate.name == "contrast")
+from visionplan.solve.gates import Gate, judge_gate
+from visionplan.solve.tolerance import share
 
 
 @dataclass(frozen=True)
@@ -80,7 +79,8 @@ class Rigs:
     """Whether a demand or a gate of the pair is unknown, of each rig."""
     source: np.ndarray
     """Which of the pairs asked for each rig belongs to."""
-    judges_contrast: bool
+    stop_gates: tuple[Gate, ...]
+    """The gates of a stop that are asked."""
 
     @property
     def cameras(self) -> np.ndarray:
@@ -133,21 +133,32 @@ class Rigs:
         short = span.shortfall(self.bounds.lo, self.bounds.hi, self.case.M)
         return np.where(np.isfinite(self.case.N), short, np.inf)
 
-    def contrast(self, rows: np.ndarray, stops: np.ndarray) -> np.ndarray:
-        """Code of the contrast gate at some rigs' stops; MET where it isn't asked."""
-        if not self.judges_contrast:
-            return np.full(len(rows), MET)
-        some, point = self.case.pick(self.arrangement, rows, stops), self.point[rows, stops][:, None]
-        some.least_contrast = np.minimum.reduce(contrasts(some, point))
-        return np.where(np.isfinite(point), judge_gate(CONTRAST, some), MISSED)[:, 0]
+    def stop_codes(self, rows: np.ndarray, stops: np.ndarray) -> np.ndarray:
+        """Worst code of the gates of a stop, at some rigs' stops; MET where none is asked."""
+        codes = np.full(len(rows), MET)
+        for gate in self.stop_gates:
+            left = np.flatnonzero(codes < MISSED)
+            some = self.case.pick(self.arrangement, rows[left], stops[left])
+            codes[left] = np.maximum(codes[left], stop_code(gate, some, self.point[rows[left], stops[left]][:, None]))
+        return codes
+
+    @cached_property
+    def share(self) -> np.ndarray:
+        """Yield of every stop that fits; NaN for the others."""
+        found = np.full(self.fits.shape, np.nan)
+        rows, stops = np.nonzero(self.fits)
+        if len(rows):
+            some = self.case.pick(self.arrangement, rows, stops)
+            found[rows, stops] = share(some, self.point[rows, stops][:, None])[:, 0]
+        return found
 
     @cached_property
     def fits(self) -> np.ndarray:
         """Whether a stop fits, gates of the pair included; gates of camera or lens alone are not."""
         fits = self.fits_span & (self.gates < MISSED)[:, None]
-        if self.judges_contrast:
+        if self.stop_gates:
             rows, stops = np.nonzero(fits)
-            fits[rows, stops] = self.contrast(rows, stops) < MISSED
+            fits[rows, stops] = self.stop_codes(rows, stops) < MISSED
         return fits
 
     @cached_property
@@ -159,3 +170,12 @@ class Rigs:
 def rows_of(values, rows):
     """Some rows of an array, or what is the same for all rows."""
     return values[rows] if np.ndim(values) and len(values) > 1 else values
+
+
+def stop_code(gate: Gate, case: Case, point: np.ndarray) -> np.ndarray:
+    """Codes of a gate of a stop for rigs at their working points, shape (rigs, 1); MISSED where there is none."""
+    if gate.name == "contrast":
+        case.least_contrast = np.minimum.reduce(contrasts(case, point))
+    else:
+        case.share = share(case, point)
+    return np.where(np.isfinite(point), judge_gate(gate, case), MISSED)[:, 0]

@@ -73,6 +73,8 @@ def rank(
     given = concede_problem(problem, fitting) if wanted else None
     pairs = len(catalogue.cameras) * len(catalogue.lenses)
     notes = contradictions(problem.ask)
+    if given and brief.min_yield is not None:
+        notes += ("The concessions leave the yield aside: give somewhat more than they say to have it too.",)
     return Ranking(brief, catalogue, order, pairs, fitting, rigs, given, perf_counter() - begin, notes)
 
 
@@ -199,6 +201,6 @@ def _missing_pairs(problem: Problem, items: Items) -> _Pairs:
     number, lens = np.divmod(np.arange(len(least)), lenses)
     gate = np.isinf(clear) | missing[classes.first][number] | (items.lens[lens] == MISSED)
     limit = problem.brief.max_price
-    if limit is not None:
+    if limit is not None and not np.isnan(problem.catalogue.spacers["price"]).any():  # unpriced rings may spare it
         gate |= classes.cheapest[number] + problem.lens["lens_price"][lens] > limit * (1 + span.EDGE)
     return _Pairs(classes, number, lens, [gate, np.where(gate, least, clear)], False)

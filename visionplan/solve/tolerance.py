@@ -17,9 +17,7 @@ from visionplan.optics.conjugates import magnification_at, object_distance
 from visionplan.solve.case import Case
 from visionplan.solve.demands import NOT_ASKED, Demand, asked_demands, judge
 from visionplan.solve.rig import Rig
-from visionplan.solve.rigs import Rigs
 from visionplan.solve.span import holds
-from visionplan.solve.variant import varied
 
 DRAWS = 10_000
 SEED = 1
@@ -73,15 +71,9 @@ def yield_of(rig: Rig) -> Yield | None:
     return _KNOWN[rig.case]
 
 
-def shares(rigs: Rigs) -> np.ndarray:
-    """The share of draws that holds, of every rig's every stop that fits: (rigs, stops), NaN for the others."""
-    found = np.full(rigs.fits.shape, np.nan)
-    rows, stops = np.nonzero(rigs.fits & _varies(rigs.case))
-    if len(rows):
-        found[rows, stops] = (
-            _drawn(rigs.case.pick(rigs.arrangement, rows, stops), rigs.point[rows, stops][:, None])[0] / DRAWS
-        )
-    return found
+def share(case: Case, m: np.ndarray) -> np.ndarray:
+    """The share of draws that holds, of rigs planned at m: shape (rigs, 1); NaN where nothing stated may be off."""
+    return np.where(_varies(case), _drawn(case, m)[0][:, None] / DRAWS, np.nan)
 
 
 def interval(hits: int, draws: int) -> tuple[float, float]:
@@ -98,11 +90,11 @@ def interval(hits: int, draws: int) -> tuple[float, float]:
 
 def focal_tolerance(case: Case) -> float | None:
     """What the lens of one rig states, as a fraction; None for nothing."""
-    stated = float(_focal_tolerance(case))
+    stated = float(stated_focal_tolerance(case))
     return None if np.isnan(stated) else stated
 
 
-def _focal_tolerance(case: Case):
+def stated_focal_tolerance(case: Case):
     """Of many rigs, NaN where not stated; a telecentric lens has no focal length to be off."""
     stated = case.problem.catalogue.lenses["focal tolerance"][case.lenses]
     return np.where(case.telecentric, 0.0, stated[:, None] if np.ndim(stated) else stated)
@@ -110,7 +102,7 @@ def _focal_tolerance(case: Case):
 
 def _varies(case: Case):
     """Whether anything is stated that may be off."""
-    return (case.brief.working_distance_tolerance > 0) | ~np.isnan(_focal_tolerance(case))
+    return (case.brief.working_distance_tolerance > 0) | ~np.isnan(stated_focal_tolerance(case))
 
 
 def _yield(case: Case, hits: int, fails: dict[str, int]) -> Yield:
@@ -124,7 +116,7 @@ def _together(cases: Sequence[Case]) -> Case:
     numeric = [name for name, value in cases[0].__dict__.items() if isinstance(value, int | float)]
     columns = {name: np.array([getattr(case, name) for case in cases])[:, None] for name in numeric}
     columns |= {name: columns[name][:, 0] for name in ("cameras", "lenses")}
-    return varied(cases[0], **columns)
+    return cases[0].varied(**columns)
 
 
 def _drawn(case: Case, m: np.ndarray) -> tuple[np.ndarray, dict[str, np.ndarray]]:
@@ -150,11 +142,11 @@ def _drawn(case: Case, m: np.ndarray) -> tuple[np.ndarray, dict[str, np.ndarray]
 
 def _built(case: Case, m: np.ndarray, focal: np.ndarray, distance: np.ndarray) -> tuple[Case, np.ndarray]:
     """The rigs with their focal length and distance off by shares of their tolerances, and the magnification then."""
-    f = case.f * (1 + np.nan_to_num(_focal_tolerance(case)) * focal)
+    f = case.f * (1 + np.nan_to_num(stated_focal_tolerance(case)) * focal)
     with np.errstate(invalid="ignore", divide="ignore"):
         s = object_distance(case.f, m) + case.brief.working_distance_tolerance * distance
         built = np.where(s > f, magnification_at(f, s), np.inf)
-    return varied(case, f=f), np.where(case.telecentric, m, built)
+    return case.varied(f=f), np.where(case.telecentric, m, built)
 
 
 def _holds(demand: Demand, case: Case, m: np.ndarray, worst: bool = False) -> np.ndarray:
@@ -169,4 +161,4 @@ def _holds(demand: Demand, case: Case, m: np.ndarray, worst: bool = False) -> np
 def _some(case: Case, rows: np.ndarray) -> Case:
     """Of some rigs."""
     shared = {name: value[rows] for name, value in case.__dict__.items() if np.ndim(value) and len(value) > 1}
-    return varied(case, **shared)
+    return case.varied(**shared)

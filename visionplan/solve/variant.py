@@ -7,12 +7,8 @@ import numpy as np
 
 from visionplan.brief.model import Brief
 from visionplan.catalogue.items import Catalogue, Table
-from visionplan.solve.case import Case
 from visionplan.solve.one import judge_one
 from visionplan.solve.rig import Rig
-
-_FOLLOWING = {"f": ("phi",), "p": ("psi",), "d": ("e",), "rings": ("e",)}
-"""Symbol → those that follow from it."""
 
 
 def variant(
@@ -64,12 +60,3 @@ def _of_pair(catalogue: Catalogue, camera: int, lens: int, other: Mapping[str, f
 def _row(table: Table, row: int) -> Table:
     values = {column: cells[row : row + 1] for column, cells in table.values.items()}
     return replace(table, values=values, lines=table.lines[row : row + 1], index={values["id"][0]: 0})
-
-
-def varied(case: Case, **given) -> Case:
-    """A case with other values of some symbols, arrays that broadcast against the rest."""
-    other = Case(case.problem)
-    stale = {name for symbol in given for name in _FOLLOWING.get(symbol, ())}
-    other.__dict__.update({name: value for name, value in case.__dict__.items() if name not in stale})
-    other.__dict__.update(given)
-    return other

@@ -26,6 +26,7 @@ from visionplan.solve.gates import ASKED, GATES, Gate, judge_gate
 from visionplan.solve.gates import price as rig_price
 from visionplan.solve.judge import Judge
 from visionplan.solve.rig import Contrast, Rig, Value, Verdict
+from visionplan.solve.rigs import stop_code
 
 
 def rigs_of(judge: Judge, chosen: Chosen) -> tuple[Rig, ...]:
@@ -36,8 +37,7 @@ def rigs_of(judge: Judge, chosen: Chosen) -> tuple[Rig, ...]:
     with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
         shown = _figures(case, m)
         contrast = figures.contrasts(case, m)
-    case.least_contrast = np.minimum.reduce(contrast)
-    gates = [_gate_columns(gate, judge, case) for gate in GATES]
+    gates = [_gate_columns(gate, judge, case, m) for gate in GATES]
     return tuple(_rig(chosen, number, one, demands, gates, shown, contrast) for number, one in enumerate(case.rows()))
 
 
@@ -109,7 +109,7 @@ def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, An
     return {"lo": lo.tolist(), "hi": hi.tolist(), "code": code.tolist(), "asked": asked, "got": got.tolist()}
 
 
-def _gate_columns(gate: Gate, judge: Judge, case: Case) -> np.ndarray:
+def _gate_columns(gate: Gate, judge: Judge, case: Case, m) -> np.ndarray:
     rigs = len(case.cameras)
     if gate not in judge.gates:
         return np.full(rigs, NOT_ASKED)
@@ -117,8 +117,7 @@ def _gate_columns(gate: Gate, judge: Judge, case: Case) -> np.ndarray:
         return judge_gate(gate, judge.problem)[case.cameras]
     if gate.of == "lens":
         return judge_gate(gate, judge.problem)[case.lenses]
-    codes = _flat(judge_gate(gate, case), rigs)
-    return np.where(np.isnan(case.least_contrast[:, 0]), MISSED, codes) if gate.of == "stop" else codes
+    return stop_code(gate, case, m) if gate.of == "stop" else _flat(judge_gate(gate, case), rigs)
 
 
 def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast) -> Rig:

@@ -54,7 +54,7 @@ def _add_map(actions) -> None:
     parser.add_argument("--heading", metavar="ROW", type=count, default=0, help="row of the headings; guessed")
     parser.add_argument("--worksheet", metavar="NAME", help="sheet of the workbook; all that look like items")
     parser.add_argument("--encoding", metavar="NAME", default="", help="of a CSV file, such as windows-1250; found out")
-    parser.add_argument("--delimiter", metavar="SIGN", default="", help="of a CSV file, such as ';'; found out")
+    parser.add_argument("--delimiter", metavar="SIGN", default="", help="of a CSV file, such as ';' or tab; found out")
     parser.set_defaults(run=run_map)
 
 
@@ -93,7 +93,8 @@ def run_map(args: argparse.Namespace) -> int:
     from visionplan.catalogue.intake.guess import guess_file
     from visionplan.commands.console import complain, data
 
-    guesses = guess_file(args.sheet, args.item, args.heading, args.worksheet, args.encoding, args.delimiter)
+    delimiter = "\t" if args.delimiter in ("tab", "\\t") else args.delimiter
+    guesses = guess_file(args.sheet, args.item, args.heading, args.worksheet, args.encoding, delimiter)
     for guess in guesses:
         complain(*summary(guess))
     data(map_text(guesses))

@@ -9,10 +9,13 @@ from visionplan.catalogue.folder import read_catalogue
 from visionplan.catalogue.intake.columnmap import read_map
 from visionplan.catalogue.intake.draft import map_text, summary
 from visionplan.catalogue.intake.guess import guess_file
+from visionplan.catalogue.intake.synonyms import PAIRS, SYNONYMS, USUAL_UNITS, WORDS
 from visionplan.catalogue.intake.take import take
 from visionplan.catalogue.intake.wording import split
+from visionplan.catalogue.items import COLUMNS
 from visionplan.demo import demo_folder
 from visionplan.faults import InputError
+from visionplan.units import factor
 
 CAMERAS = [
     [
@@ -193,3 +196,11 @@ def test_a_hundred_thousand_rows_are_not_all_read_for_a_guess(intake):
     sheet = intake.sheet(csv_bytes([*LENSES, *(LENSES[1:] * 50_000)]))
     (guess,) = guess_file(sheet)
     assert guess.map.item == "lenses"
+
+
+def test_the_words_are_those_of_our_columns():
+    columns = {column.name: column for item in COLUMNS.values() for column in item}
+    assert {name for pair in PAIRS for name in pair} | SYNONYMS.keys() | USUAL_UNITS.keys() == set(columns)
+    assert WORDS.keys() == {word for item in COLUMNS.values() for column in item for word in column.choices}
+    for name, unit in USUAL_UNITS.items():
+        assert factor(unit, columns[name].unit)

@@ -22,6 +22,11 @@ _NUMBER = re.compile(r"([+-]?[\d.,'’ ]*\d[.,]?(?:[eE][+-]?\d+)?)\s*(.*)", re.A
 _MONEY = re.compile(r"(?P<before>[A-Z]{3}|[$€£¥])?\s*(?P<number>[^A-Z$€£¥]*?)\s*(?P<after>[A-Z]{3}|[$€£¥])?")
 
 
+CODES = {"€": "EUR", "£": "GBP"}
+"""Signs of one currency alone."""
+_SHARED_SIGNS = {"$": ("USD", "AUD", "CAD", "HKD", "MXN", "NZD", "SGD", "TWD"), "¥": ("JPY", "CNY")}
+
+
 def converter(source: Source, sheet_map: SheetMap) -> Callable[[str], tuple[str, ...]]:
     """Make what turns a cell of a column into a cell for each of our columns; raises UnitError."""
 
@@ -92,7 +97,8 @@ def _without_currency(text: str, unit: str) -> str:
     named = match and (match["before"] or match["after"])
     if not match or not named:
         return text
-    if named != unit or (match["before"] and match["after"]):
+    same = CODES.get(named, named) == CODES.get(unit, unit) or unit in _SHARED_SIGNS.get(named, ())
+    if not same or (match["before"] and match["after"]):
         expected = f"a price in {unit}, as the map says" if CURRENCY.fullmatch(unit) else "the unit said in the map"
         raise UnitError(f"{quoted(text)} names the currency {named}", expected)
     return match["number"]

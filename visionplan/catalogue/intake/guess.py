@@ -7,7 +7,7 @@ from itertools import islice
 
 from visionplan.catalogue.heading import CURRENCY
 from visionplan.catalogue.intake.columnmap import EMPTY, SheetMap, Source
-from visionplan.catalogue.intake.convert import converter
+from visionplan.catalogue.intake.convert import CODES, converter
 from visionplan.catalogue.intake.sheet import Row, Sheet, read_sheets, tidy
 from visionplan.catalogue.intake.signs import find_signs
 from visionplan.catalogue.intake.synonyms import PAIRS, SYNONYMS, USUAL_UNITS, WORDS
@@ -195,6 +195,7 @@ def _guess(sheet: Sheet, settings: SheetMap, theirs: tuple[Theirs, ...]) -> tupl
     for one in theirs:
         for names, called in _targets(settings.item):
             like = likeness(one.words, called)
+            like += 0.05 * (one.words == plain(names[0]) and len(names) == 1)  # our own name goes first
             columns = tuple(ours[name] for name in names)
             if like and (suits := _suits(one, columns, settings)):
                 offers.append((like + suits, one, columns))
@@ -265,6 +266,7 @@ def _source(theirs: Theirs, columns: tuple[Column, ...]) -> tuple[Source, list[s
     if not unit and column.currency:
         named = {match[0] for cell in theirs.cells if (match := MONEY.search(cell))}
         unit = named.pop() if len(named) == 1 else ""
+    unit = CODES.get(unit, unit)
     words = {}
     if column.kind == "choice":
         words = {tidy(cell): _our_word(cell, column) for cell in theirs.cells}

@@ -12,6 +12,10 @@ SYNONYMS: dict[str, tuple[str, ...]] = {
         "lens mount", "camera mount", "mount type", "thread", "objektivanschluss", "anschluss", "gewinde", "fassung",
         "bajonett", "monture",
     ),
+    "camera mount": (
+        "camera side", "camera side mount", "camera side thread", "camera thread", "kameraseitig", "kameraanschluss",
+    ),
+    "travel": ("focus travel", "helicoid travel", "stroke", "adjustment range", "hub", "verstellweg", "course"),
     "maker": ("manufacturer", "brand", "vendor", "make", "supplier", "hersteller", "marke", "fabricant"),
     "kind": ("type", "lens type", "camera type", "lens kind", "typ", "bauart", "art", "objektivtyp", "kameratyp"),
     "focal length": ("focal length f", "focal", "efl", "effective focal length", "brennweite", "focale", "f"),

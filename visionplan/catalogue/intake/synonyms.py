@@ -90,10 +90,10 @@ SYNONYMS: dict[str, tuple[str, ...]] = {
         "pixel size", "pitch", "cell size", "pixel size h", "pixelgröße", "pixelabstand", "pixelmaß", "taille de pixel",
     ),
     "colour": (
-        "color", "mono color", "mono colour", "color mono", "colour mono", "chroma", "sensor color", "spectrum",
+        "color", "mono color", "mono colour", "color mono", "colour mono", "chroma", "sensor color", "spectrum", "sensor type", "sensor",
         "farbe", "mono farbe", "farbe mono", "couleur",
     ),
-    "shutter": ("shutter type", "sensor shutter", "verschluss", "verschlussart", "obturateur"),
+    "shutter": ("shutter type", "sensor type", "sensor", "sensor shutter", "verschluss", "verschlussart", "obturateur"),
     "interface": ("data interface", "camera interface", "bus", "schnittstelle", "datenschnittstelle"),
     "cable limit": (
         "max cable length", "maximum cable length", "cable length", "max cable", "kabellänge", "max kabellänge",

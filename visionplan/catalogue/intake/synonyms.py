@@ -90,7 +90,8 @@ SYNONYMS: dict[str, tuple[str, ...]] = {
         "pixel size", "pitch", "cell size", "pixel size h", "pixelgröße", "pixelabstand", "pixelmaß", "taille de pixel",
     ),
     "colour": (
-        "color", "mono color", "mono colour", "color mono", "colour mono", "chroma", "sensor color", "spectrum", "sensor type", "sensor",
+        "color", "mono color", "mono colour", "color mono", "colour mono", "chroma", "sensor color", "spectrum",
+        "sensor type", "sensor",
         "farbe", "mono farbe", "farbe mono", "couleur",
     ),
     "shutter": ("shutter type", "sensor type", "sensor", "sensor shutter", "verschluss", "verschlussart", "obturateur"),

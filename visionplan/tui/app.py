@@ -8,7 +8,6 @@ from textual.app import App, ComposeResult
 from textual.binding import Binding, BindingType
 from textual.containers import Horizontal, Vertical
 from textual.events import Event, Key, Resize
-from textual.screen import Screen
 
 from visionplan.catalogue.items import Catalogue
 from visionplan.faults import InputError
@@ -17,6 +16,7 @@ from visionplan.tui.brief_pane import BriefPane
 from visionplan.tui.chrome import NEEDED, Foot, Head, Small, key_names
 from visionplan.tui.filing import Filing
 from visionplan.tui.help import help_rows
+from visionplan.tui.lines import Lines
 from visionplan.tui.looks import PALETTES, THEMES
 from visionplan.tui.pages import Page, PickPage, TextPage
 from visionplan.tui.pane import Pane
@@ -32,10 +32,6 @@ WIDE = (120, 35)
 """Columns and rows from which three views stand together."""
 
 
-class Main(Screen):
-    """The screen of the views."""
-
-
 class PlanApp(Filing, Solving, App[None]):
     """The terminal interface of one work."""
 
@@ -47,6 +43,7 @@ class PlanApp(Filing, Solving, App[None]):
     .wide #rig { height: 3fr; }
     """
     ENABLE_COMMAND_PALETTE = False
+    AUTO_FOCUS = None
     BINDINGS: ClassVar[list[BindingType]] = [
         Binding("1", "view(1)", "Brief", show=False),
         Binding("2", "view(2)", "Rigs", show=False),
@@ -114,15 +111,14 @@ class PlanApp(Filing, Solving, App[None]):
         width, height = size or self.size
         enough = width >= NEEDED[0] and height >= NEEDED[1]
         self.wide = width >= WIDE[0] and height >= WIDE[1]
-        with self.batch_update():
-            self.small.display = not enough
-            for part in (self.head, self.body, self.foot):
-                part.display = enough
-            together = self.wide and self.pane is not self.shortlist
-            for pane in self.panes:
-                pane.display = pane is self.pane or (together and pane is not self.shortlist)
-            self.query_one("#right").display = self.rigs.display or self.rig_pane.display
-            self.screen_stack[0].set_class(together, "wide")
+        for part in (self.head, self.body, self.foot):
+            part.display = enough
+        together = self.wide and self.pane is not self.shortlist
+        for pane in self.panes:
+            _show(pane, pane is self.pane or (together and pane is not self.shortlist))
+        _show(self.small, not enough)
+        self.query_one("#right").display = self.rigs.display or self.rig_pane.display
+        self.screen_stack[0].set_class(together, "wide")
         if enough and len(self.screen_stack) == 1:
             self.pane.focus()
         if self.wide and self.rig_pane.base is None:
@@ -137,14 +133,13 @@ class PlanApp(Filing, Solving, App[None]):
         """Show what has changed, wherever."""
         if not self.is_running or not self.screen_stack:
             return
-        with self.batch_update():
-            top = self.screen
-            if isinstance(top, Page):
-                top.redraw()
-                return
-            for part in (self.head, self.small, *self.panes, self.foot):
-                if part.is_mounted:
-                    part.redraw()
+        top = self.screen
+        if isinstance(top, Page):
+            top.redraw()
+            return
+        for part in (self.head, self.small, *self.panes, self.foot):
+            if part.is_mounted:
+                part.redraw()
 
     def wear(self, palette: str) -> None:
         """Put on other colours."""
@@ -191,12 +186,12 @@ class PlanApp(Filing, Solving, App[None]):
         """Go on to the next view."""
         self.action_view((self.panes.index(self.pane) + by) % len(self.panes) + 1)
 
-    def on_descendant_focus(self) -> None:
-        """The view that the mouse points at is the one in use."""
-        if isinstance(self.focused, Pane) and self.focused is not self.pane:
+    def focused_pane(self, pane: Pane) -> None:
+        """The view that takes the keys is the one in use, also where the mouse pointed at it."""
+        if pane is not self.pane:
             self._leave_typing()
-            self.pane = self.focused
-            self.redraw()
+            self.pane = pane
+        self.redraw()
 
     def _leave_typing(self) -> None:
         if self.brief_pane.entry:
@@ -391,3 +386,10 @@ class PlanApp(Filing, Solving, App[None]):
         self.solver.close()
         self.state.close()
         self.exit()
+
+
+def _show(part: Lines, shown: bool) -> None:
+    """Show a part or hide it; one that comes into view is drawn anew, as it may have changed."""
+    if shown and not part.display:
+        part.anew()
+    part.display = shown

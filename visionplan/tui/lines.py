@@ -34,14 +34,11 @@ class Lines(Widget):
         width, height = self.size
         if not (width and height and self.is_mounted and self.display):
             return
-        look = (self.app.palette, self.app.ascii, width, height)  # type: ignore[attr-defined]
-        fresh = [self._fitted(row, width) for row in list(self.rows(width, height))[:height]]
-        fresh += [fit([], width)] * (height - len(fresh))
-        before, self._shown = self._shown, fresh
-        if look != self._look:
-            self._look = look
-            self.refresh()
+        if self._look != self._now():
+            self.anew()
             return
+        before, fresh = self._shown, self._drawn()
+        self._shown = fresh
         regions = [
             Region(start, y, end - start, 1)
             for y, (old, new) in enumerate(zip(before, fresh))
@@ -52,6 +49,20 @@ class Lines(Widget):
         if regions:
             self.refresh(*regions)
 
+    def anew(self) -> None:
+        """Draw everything the next time the screen is painted."""
+        self._look = None
+        self.refresh()
+
+    def _now(self) -> tuple:
+        """What the whole of the widget depends on."""
+        return self.app.palette, self.app.ascii, *self.size  # type: ignore[attr-defined]
+
+    def _drawn(self) -> list[Row]:
+        width, height = self.size
+        rows = [self._fitted(row, width) for row in list(self.rows(width, height))[:height]]
+        return rows + [fit([], width)] * (height - len(rows))
+
     def _fitted(self, row: Row, width: int) -> Row:
         fitted = fit(row, width)
         if self.app.ascii:  # type: ignore[attr-defined]
@@ -59,16 +70,13 @@ class Lines(Widget):
         return fitted
 
     def on_resize(self) -> None:
-        """Draw at the new size."""
-        self.redraw()
-
-    def on_show(self) -> None:
-        """Draw what changed while it was hidden."""
-        self._look = None
+        """Draw at the new size, unless that has been painted already."""
         self.redraw()
 
     def render_line(self, y: int) -> Strip:
-        """Give one row to Textual."""
+        """Give one row to Textual; at a new size, or after `anew`, all rows are drawn first."""
+        if self._look != self._now():
+            self._shown, self._look = self._drawn(), self._now()
         palette = self.app.palette  # type: ignore[attr-defined]
         if y >= len(self._shown):
             return Strip([Piece(" " * self.size.width, style(palette, ""))], self.size.width)

@@ -13,6 +13,7 @@ _TERMINAL = {
     "name": "",
     "axis": "dim",
     "bar": "",
+    "holds": "green",
     "pinch": "bold yellow",
     "missed": "red",
     "value": "",
@@ -48,12 +49,12 @@ _PLAIN = {
 _DUSK = {
     "paper": "#161a1d",
     "ink": "#dfe3e0",
-    "faint": "#949f9f",
+    "faint": "#a0abab",
     "good": "#86d39b",
     "fair": "#e6c35c",
     "bad": "#ff9d8a",
     "blue": "#8cc4e4",
-    "here": "#34474f",
+    "here": "#26363d",
 }
 _DAYLIGHT = {
     "paper": "#faf8f2",
@@ -75,6 +76,7 @@ _COLOURED = {
     "name": "ink",
     "axis": "faint",
     "bar": "ink",
+    "holds": "good",
     "pinch": "bold fair",
     "missed": "bad",
     "value": "ink",

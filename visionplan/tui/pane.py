@@ -4,7 +4,7 @@ from collections.abc import Callable, Hashable, Sequence
 from typing import TYPE_CHECKING, ClassVar
 
 from textual.binding import Binding, BindingType
-from textual.events import Click, MouseScrollDown, MouseScrollUp
+from textual.events import Blur, Click, Focus, MouseScrollDown, MouseScrollUp
 
 from visionplan.tui.lines import Lines
 from visionplan.tui.rows import Row, cell
@@ -140,8 +140,15 @@ class Pane(Lines, can_focus=True):
         """Show what the cursor has come to."""
         self.app.redraw()
 
-    def on_focus(self) -> None:
-        """Show the keys of this view."""
+    def _on_focus(self, event: Focus) -> None:
+        """Take the keys. What Textual itself would do here sends the whole view again."""
+        event.prevent_default()
+        self.has_focus = True
+        self.app.focused_pane(self)
+
+    def _on_blur(self, event: Blur) -> None:
+        event.prevent_default()
+        self.has_focus = False
         self.app.redraw()
 
     def on_click(self, event: Click) -> None:

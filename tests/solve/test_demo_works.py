@@ -59,7 +59,7 @@ def test_each_brief_is_met_by_a_few_pairs_of_thousands(name):
     if name == "rim-cracks":
         assert ranking.fitting == 0
     else:
-        assert 3 <= ranking.fitting <= 0.02 * ranking.pairs
+        assert 3 <= ranking.fitting <= 0.03 * ranking.pairs
 
 
 def test_jar_lids():

@@ -1,4 +1,4 @@
-"""Palettes: contrast by the formula of WCAG 2.1 (relative luminance as in sRGB, from memory), and no role without one."""
+"""Palettes: contrast by the formula of WCAG 2.1 (luminance as in sRGB, from memory); no role without one."""
 
 import itertools
 

@@ -2,12 +2,14 @@
 
 from collections.abc import Callable, Iterator
 from concurrent.futures import Future
+from inspect import isawaitable
 from typing import ClassVar
 
 from textual.app import App, ComposeResult
 from textual.binding import Binding, BindingType
 from textual.containers import Horizontal, Vertical
-from textual.events import Event, Key, Resize
+from textual.dom import DOMNode
+from textual.events import Event, Key, Paste, Resize
 
 from visionplan.catalogue.items import Catalogue
 from visionplan.faults import InputError
@@ -78,6 +80,8 @@ class PlanApp(Filing, Solving, App[None]):
         self.palette = palette
         self.wide = False
         self.message: tuple[str, str] | None = None
+        self._after: dict[Page, Callable] = {}
+        """What follows the answer of each page that is shown."""
         self.head, self.foot, self.small = Head(), Foot(), Small()
         self.brief_pane, self.rigs, self.rig_pane, self.shortlist = BriefPane(), RigsPane(), RigPane(), ShortlistPane()
         self.panes: tuple[Pane, ...] = (self.brief_pane, self.rigs, self.rig_pane, self.shortlist)
@@ -148,11 +152,53 @@ class PlanApp(Filing, Solving, App[None]):
         self.redraw()
 
     async def on_event(self, event: Event) -> None:
-        """Let what was said go with the next key."""
-        if isinstance(event, Key) and self.message and not isinstance(self.screen, Page):
-            self.message = None
-            self.foot.redraw()
-        await super().on_event(event)
+        """Take keys one after the other, each wholly before the next: on a slow line they come in bursts."""
+        if isinstance(event, Key) and not event.is_forwarded:
+            await self._press(event)
+        elif isinstance(event, Paste) and not event.is_forwarded:
+            top = self.screen
+            if isinstance(top, Page):
+                top.pasted(event.text)
+            elif self.pane.typing:
+                self.pane.pasted(event.text)
+        else:
+            await super().on_event(event)
+
+    async def _press(self, event: Key) -> None:
+        top = self.screen
+        if isinstance(top, Page):
+            if not await top.pressed(event):
+                await self._act_on(top, event.key)
+            return
+        self.message = None
+        if self.pane.typing:
+            self.pane.typed(event)
+        elif not await self._act_on(self.pane, event.key):
+            await self._act_on(self, event.key)
+        self.foot.redraw()
+
+    async def _act_on(self, holder: DOMNode, key: str) -> bool:
+        """Do what a binding of the holder says of the key; whether there is one."""
+        bindings = holder._bindings.key_to_bindings.get(key)
+        if bindings:
+            await self.run_action(bindings[-1].action, holder)
+        return bool(bindings)
+
+    def show(self, page: Page, then: Callable) -> None:
+        """Put a page over the views, and act on its answer."""
+        self._after[page] = then
+        self.push_screen(page)
+
+    async def leave(self, page: Page, value: object) -> None:
+        """Take a page away and act on its answer."""
+        then = self._after.pop(page, None)
+        if then is None:
+            return
+        await self.pop_screen()
+        told = then(value)
+        if isawaitable(told):
+            await told
+        self.redraw()
 
     def tell(self, text: str, role: str = "strong") -> None:
         """Say something until the next key."""
@@ -292,13 +338,13 @@ class PlanApp(Filing, Solving, App[None]):
         keys = [(key_names(binding), binding.description) for binding in self._of(self.pane)]
         everywhere = [(key_names(binding), binding.description) for binding in self._everywhere()]
         label = self.pane.label
-        self.push_screen(TextPage(label, lambda width: help_rows(label, keys, everywhere, width)), self._back)
+        self.show(TextPage(label, lambda width: help_rows(label, keys, everywhere, width)), self._back)
 
     def action_whole(self) -> None:
         """Show the hint in full."""
         text = self.pane.hint()
         if text:
-            self.push_screen(TextPage(self.pane.label, lambda width: paragraph(text, width - 4, "", "  ")), self._back)
+            self.show(TextPage(self.pane.label, lambda width: paragraph(text, width - 4, "", "  ")), self._back)
 
     def action_palette(self) -> None:
         """Find an action by its name."""
@@ -314,7 +360,7 @@ class PlanApp(Filing, Solving, App[None]):
             ("copy the shortlist as CSV", "", "0 copy_as('csv')"),
             ("copy the shortlist as JSON", "", "0 copy_as('json')"),
         ]
-        self.push_screen(PickPage("Every action", options), self._act)
+        self.show(PickPage("Every action", options), self._act)
 
     async def _act(self, chosen: str | None) -> None:
         if chosen:
@@ -341,7 +387,7 @@ class PlanApp(Filing, Solving, App[None]):
             "daylight": "dark on light",
         }
         options = [(name, words[name], name) for name in PALETTES]
-        self.push_screen(PickPage("Which colours?", options, current=self.palette), self._wear)
+        self.show(PickPage("Which colours?", options, current=self.palette), self._wear)
 
     def _wear(self, palette: str | None) -> None:
         if palette:
@@ -364,7 +410,7 @@ class PlanApp(Filing, Solving, App[None]):
         if self.state.journal.problem:
             intro += f" They are not kept on disk either ({self.state.journal.problem}): quitting loses them."
             options[1] = ("Quit", "lose them", "quit")
-        self.push_screen(PickPage("Quit?", options, intro=intro, narrow=False), self._leave)
+        self.show(PickPage("Quit?", options, intro=intro, narrow=False), self._leave)
 
     def _leave(self, choice: str | None) -> None:
         if choice == "quit":

@@ -5,7 +5,7 @@ from functools import lru_cache, partial
 from typing import ClassVar
 
 from textual.binding import Binding, BindingType
-from textual.events import Key, Paste
+from textual.events import Key
 
 from visionplan.brief.fields import BY_KEY, LINES, SECTIONS, Line, expected
 from visionplan.brief.forms import value_text, value_texts
@@ -149,16 +149,14 @@ class BriefPane(Pane):
         self.entry, self.fault = Entry(value), None
         self.moved()
 
-    def check_consume_key(self, key: str, character: str | None) -> bool:
+    @property
+    def typing(self) -> bool:
         """Keys go into the value while one is being typed."""
         return self.entry is not None
 
-    def on_key(self, event: Key) -> None:
+    def typed(self, event: Key) -> None:
         """Type."""
-        if self.entry is None:
-            return
-        event.stop()
-        event.prevent_default()
+        assert self.entry
         if event.key == "escape":
             self.leave()
         elif event.key == "enter":
@@ -171,12 +169,11 @@ class BriefPane(Pane):
         elif self.entry.press(event.key, event.character):
             self._typed()
 
-    def on_paste(self, event: Paste) -> None:
+    def pasted(self, text: str) -> None:
         """Type what was pasted."""
-        if self.entry is not None:
-            event.stop()
-            self.entry.insert(event.text)
-            self._typed()
+        assert self.entry
+        self.entry.insert(text)
+        self._typed()
 
     def _typed(self) -> None:
         assert self.entry

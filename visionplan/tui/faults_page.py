@@ -21,9 +21,9 @@ class FaultsPage(Page[str]):
         Binding("pagedown", "move(12)"),
         Binding("home", "move(-1000000)"),
         Binding("end", "move(1000000)"),
-        Binding("s", "answer('skip')"),
-        Binding("r", "answer('again')"),
-        Binding("c,enter", "answer('other')"),
+        Binding("s", "act('skip')"),
+        Binding("r", "act('again')"),
+        Binding("c,enter", "act('other')"),
     ]
 
     def __init__(self, name: str, faults: Sequence[Fault], catalogue: bool = True):
@@ -75,6 +75,6 @@ class FaultsPage(Page[str]):
         self.place = max(0, min(self.place + by, len(self.faults) - 1))
         self.redraw()
 
-    def action_answer(self, answer: str) -> None:
+    async def action_act(self, answer: str) -> None:
         """Do something about them."""
-        self.dismiss(answer if self.catalogue else None)
+        await self.answer(answer if self.catalogue else None)

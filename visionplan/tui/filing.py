@@ -44,7 +44,7 @@ class Filing:
     if TYPE_CHECKING:
         app: Any
         state: Any
-        push_screen: Any
+        show: Any
         tell: Any
         redraw: Any
         post_message: Any
@@ -80,7 +80,7 @@ class Filing:
             return
         self.reading = ""
         if message.catalogue is None:
-            self.push_screen(FaultsPage(message.folder, message.faults), self._after_faults)
+            self.show(FaultsPage(message.folder, message.faults), self._after_faults)
         else:
             self.state.loaded(message.catalogue)
             for warning in message.catalogue.warnings[-1:]:
@@ -101,7 +101,7 @@ class Filing:
         """Choose another catalogue."""
         here = os.path.join(self.state.catalogue_folder, "")
         intro = "A folder with lenses.csv and cameras.csv, perhaps spacers.csv. Empty the line for the demo works."
-        self.push_screen(PathPage("Which catalogue?", here, intro, folders=True, empty=True), self._choose_catalogue)
+        self.show(PathPage("Which catalogue?", here, intro, folders=True, empty=True), self._choose_catalogue)
 
     def _choose_catalogue(self, folder: str | None) -> None:
         if folder is None or not self.may_change():  # type: ignore[attr-defined]
@@ -124,7 +124,7 @@ class Filing:
         start = self.state.work.path or str(demo_folder() / "briefs" / "x")
         start = os.path.join(os.path.dirname(start), "")
         intro = "A brief, a TOML file. What is open now is kept as it is and offered again."
-        self.push_screen(PathPage("Which brief?", start, intro, suffix=".toml"), self._open)
+        self.show(PathPage("Which brief?", start, intro, suffix=".toml"), self._open)
 
     def _open(self, path: str | None) -> None:
         if path is None:
@@ -133,7 +133,7 @@ class Filing:
         try:
             self.state.open(path, beside(path))
         except InputError as error:
-            self.push_screen(FaultsPage(path, error.faults, catalogue=False), lambda _: self.redraw())
+            self.show(FaultsPage(path, error.faults, catalogue=False), lambda _: self.redraw())
             return
         self.opened(before)
 
@@ -167,7 +167,7 @@ class Filing:
                 self.brief_changed()  # type: ignore[attr-defined]
             self.redraw()
 
-        self.push_screen(PickPage("Work left off", options, intro=intro, narrow=False), chosen)
+        self.show(PickPage("Work left off", options, intro=intro, narrow=False), chosen)
 
     def action_save(self) -> None:
         """Write the brief to its file."""
@@ -180,7 +180,7 @@ class Filing:
         """Write the brief to another file."""
         start = self.state.work.path or free_name(Path.cwd(), "brief", ".toml")
         page = PathPage("Save the brief as", start, "A TOML file. It becomes the brief's own file.", suffix=".toml")
-        self.push_screen(page, lambda path: self._unless_there(path, lambda: self._save(path, then)))
+        self.show(page, lambda path: self._unless_there(path, lambda: self._save(path, then)))
 
     def _save(self, path: str, then: Callable[[], None] | None = None) -> None:
         if not path and not self.may_change():  # type: ignore[attr-defined]
@@ -213,7 +213,7 @@ class Filing:
             self.redraw()
 
         intro = f"{clean(path)} is there already."
-        self.push_screen(PickPage("Overwrite?", options, intro=intro, narrow=False), chosen)
+        self.show(PickPage("Overwrite?", options, intro=intro, narrow=False), chosen)
 
     # the shortlist
 
@@ -237,7 +237,7 @@ class Filing:
             self.tell("Nothing is on the shortlist.", "warn")
             return
         options = [(form, words, form) for form, (_, words) in FORMATS.items()]
-        self.push_screen(PickPage("Export the shortlist as", options, narrow=False), self._export_as)
+        self.show(PickPage("Export the shortlist as", options, narrow=False), self._export_as)
 
     def _export_as(self, form: str | None) -> None:
         if form is None:
@@ -245,7 +245,7 @@ class Filing:
         suffix = FORMATS[form][0]
         folder = Path(self.state.work.path).parent if self.state.work.path else Path.cwd()
         page = PathPage("Export to", free_name(folder, "shortlist", suffix), "The file's name.", suffix=suffix)
-        self.push_screen(page, lambda path: self._unless_there(path, lambda: self._export(form, path)))
+        self.show(page, lambda path: self._unless_there(path, lambda: self._export(form, path)))
 
     def _export(self, form: str, path: str) -> None:
         text = self.shortlist_text(form)

@@ -6,7 +6,7 @@ from typing import ClassVar, Generic, TypeVar
 
 from textual.app import ComposeResult
 from textual.binding import Binding, BindingType
-from textual.events import Key, Paste
+from textual.events import Key
 from textual.screen import Screen
 
 from visionplan.text import clean
@@ -39,6 +39,17 @@ class Page(Screen[Result], Generic[Result]):
         self.heading = title
         self.body = _Body()
 
+    async def pressed(self, event: Key) -> bool:
+        """Take a key that no binding of the page has; whether it is taken, so that no binding sees it."""
+        return False
+
+    def pasted(self, text: str) -> None:
+        """Take text from the terminal's clipboard."""
+
+    async def answer(self, value: Result | None) -> None:
+        """Leave the page with an answer, which is acted on before the next key is."""
+        await self.app.leave(self, value)  # type: ignore[attr-defined]
+
     def compose(self) -> ComposeResult:
         """Only its rows."""
         yield self.body
@@ -62,9 +73,9 @@ class Page(Screen[Result], Generic[Result]):
         """The keys that work here."""
         return [("Esc", "key"), (" back", "")]
 
-    def action_leave(self) -> None:
+    async def action_leave(self) -> None:
         """Go back with nothing chosen."""
-        self.dismiss(None)
+        await self.answer(None)
 
 
 class TextPage(Page[None]):
@@ -150,26 +161,32 @@ class PickPage(Page[str]):
         """Choosing and leaving."""
         return [("↑↓ Enter", "key"), (" choose   ", ""), *super().key_row()]
 
-    def on_key(self, event: Key) -> None:
+    async def pressed(self, event: Key) -> bool:
         """Move, narrow, choose."""
         moves = {"up": -1, "down": 1, "pageup": -10, "pagedown": 10, "shift+tab": -1, "tab": 1}
+        found = self.found
+        if event.key == "escape":
+            return False
         if event.key in moves:
             self.place += moves[event.key]
         elif event.key == "enter":
-            if found := self.found:
-                self.dismiss(found[max(0, min(self.place, len(found) - 1))][2])
+            if found:
+                await self.answer(found[max(0, min(self.place, len(found) - 1))][2])
         elif self.narrow:
-            if event.key == "escape" or not self.entry.press(event.key, event.character):
-                return
-            self.place = 0
+            if self.entry.press(event.key, event.character):
+                self.place = 0
         else:
             initials = [name[0].lower() for name, _, _ in self.options]
-            if (event.character or "").lower() not in initials:
-                return
-            self.dismiss(self.options[initials.index((event.character or "").lower())][2])
-        event.stop()
-        event.prevent_default()
+            if (event.character or " ").lower() in initials:
+                await self.answer(self.options[initials.index((event.character or " ").lower())][2])
         self.redraw()
+        return True
+
+    def pasted(self, text: str) -> None:
+        """Narrow by what was pasted."""
+        if self.narrow:
+            self.entry.insert(text)
+            self.redraw()
 
 
 class PathPage(Page[str]):
@@ -226,13 +243,13 @@ class PathPage(Page[str]):
             *super().key_row(),
         ]
 
-    def on_key(self, event: Key) -> None:
+    async def pressed(self, event: Key) -> bool:
         """Type, complete, pick."""
         self.trouble = ""
         if event.key == "escape":
-            return
+            return False
         if event.key == "enter":
-            self._enter()
+            await self._enter()
         elif event.key == "tab":
             self.entry.put(complete(self.entry.text, self.names))
             self.place = -1
@@ -240,18 +257,15 @@ class PathPage(Page[str]):
             self.place = max(-1, self.place + (1 if event.key == "down" else -1))
         elif self.entry.press(event.key, event.character):
             self.place = -1
-        else:
-            return
-        event.stop()
-        event.prevent_default()
         self.redraw()
+        return True
 
-    def on_paste(self, event: Paste) -> None:
+    def pasted(self, text: str) -> None:
         """Type what was pasted."""
-        self.entry.insert(event.text)
+        self.entry.insert(text)
         self.redraw()
 
-    def _enter(self) -> None:
+    async def _enter(self) -> None:
         if self.place >= 0:
             name = self.names[self.place]
             self.entry.put(str(Path(self.entry.text).parent / name) if "/" in self.entry.text else name)
@@ -262,7 +276,7 @@ class PathPage(Page[str]):
                 return
         typed = self.entry.text.strip()
         if not typed and self.empty:
-            self.dismiss("")
+            await self.answer("")
             return
         if not typed:
             self.trouble = "Nothing stands here; type a name."
@@ -272,4 +286,4 @@ class PathPage(Page[str]):
             self.trouble = "That is a folder; type the name of a file in it."
             self.entry.put(typed.rstrip("/") + "/")
             return
-        self.dismiss(str(path))
+        await self.answer(str(path))

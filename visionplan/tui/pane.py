@@ -4,7 +4,7 @@ from collections.abc import Callable, Hashable, Sequence
 from typing import TYPE_CHECKING, ClassVar
 
 from textual.binding import Binding, BindingType
-from textual.events import Blur, Click, Focus, MouseScrollDown, MouseScrollUp
+from textual.events import Blur, Click, Focus, Key, MouseScrollDown, MouseScrollUp
 
 from visionplan.tui.lines import Lines
 from visionplan.tui.rows import Row, cell
@@ -66,6 +66,17 @@ class Pane(Lines, can_focus=True):
     def word(self, binding: Binding) -> str:
         """What a key does where the cursor stands."""
         return binding.description
+
+    @property
+    def typing(self) -> bool:
+        """Whether keys go into a value, not to the bindings."""
+        return False
+
+    def typed(self, event: Key) -> None:
+        """Take a key into the value that is being typed."""
+
+    def pasted(self, text: str) -> None:
+        """Take text into the value that is being typed."""
 
     def hint(self) -> str:
         """What there is to know of the place of the cursor, in a sentence."""

@@ -3,7 +3,7 @@
 from typing import ClassVar
 
 from textual.binding import Binding, BindingType
-from textual.events import Key, Paste
+from textual.events import Key
 
 from visionplan.report.concession import concession_sentence
 from visionplan.report.figures import BY_NAME, room
@@ -62,7 +62,7 @@ class RigsPane(Pane):
 
     def _inline(self, missing: Table, fitting: Table | None) -> list[Item]:
         """The misses' own head, where the one that stays on top is that of the rigs that fit."""
-        return [(missing.head(), None)] if fitting and (self.rig is None or self.rig.fits) else []
+        return [(missing.head(), None)] if self.rig is None or self.rig.fits else []
 
     def _shown_tables(self, width: int) -> tuple[Table | None, Table | None]:
         """Rigs that fit and rigs that don't, laid out anew only where something has changed."""
@@ -101,8 +101,8 @@ class RigsPane(Pane):
         """Order and filter."""
         fitting, missing = self._shown_tables(width)
         rig = self.rig
-        table = missing if (rig and not rig.fits) or not fitting else fitting
-        head = [table.head()] if table else []
+        table = missing if rig and not rig.fits else fitting
+        head = [table.head()] if table and rig else []
         order = self.app.order
         if self.entry is not None:
             typed = self.entry.row(min(40, width - 40))
@@ -170,7 +170,7 @@ class RigsPane(Pane):
     def action_order(self) -> None:
         """Choose another order."""
         options = [(name, words, name) for name, words in ORDERS.items()]
-        self.app.push_screen(PickPage("Which rig comes first?", options, current=self.app.order), self.app.set_order)
+        self.app.show(PickPage("Which rig comes first?", options, current=self.app.order), self.app.set_order)
 
     def action_misses(self) -> None:
         """Show or hide what doesn't fit."""
@@ -188,16 +188,14 @@ class RigsPane(Pane):
         self.words = ""
         self.app.redraw()
 
-    def check_consume_key(self, key: str, character: str | None) -> bool:
+    @property
+    def typing(self) -> bool:
         """Keys go into the filter while it is being typed."""
         return self.entry is not None
 
-    def on_key(self, event: Key) -> None:
+    def typed(self, event: Key) -> None:
         """Type the filter."""
-        if self.entry is None:
-            return
-        event.stop()
-        event.prevent_default()
+        assert self.entry
         if event.key in ("escape", "enter"):
             self.words = "" if event.key == "escape" else self.entry.text
             self.entry = None
@@ -207,10 +205,9 @@ class RigsPane(Pane):
             self.words = self.entry.text
         self.app.redraw()
 
-    def on_paste(self, event: Paste) -> None:
+    def pasted(self, text: str) -> None:
         """Type what was pasted."""
-        if self.entry is not None:
-            event.stop()
-            self.entry.insert(event.text)
-            self.words = self.entry.text
-            self.app.redraw()
+        assert self.entry
+        self.entry.insert(text)
+        self.words = self.entry.text
+        self.app.redraw()

@@ -3,7 +3,7 @@
 from typing import ClassVar
 
 from textual.binding import Binding, BindingType
-from textual.events import Key, Paste
+from textual.events import Key
 
 from visionplan.report.remarks import pair
 from visionplan.report.shortlist import Entry as Listed
@@ -170,16 +170,14 @@ class ShortlistPane(Pane):
         """Write the shortlist to a file."""
         self.app.export()
 
-    def check_consume_key(self, key: str, character: str | None) -> bool:
+    @property
+    def typing(self) -> bool:
         """Keys go into the note while it is being typed."""
         return self.entry is not None
 
-    def on_key(self, event: Key) -> None:
+    def typed(self, event: Key) -> None:
         """Type the note."""
-        if self.entry is None:
-            return
-        event.stop()
-        event.prevent_default()
+        assert self.entry
         if event.key == "enter":
             self.state.note(self.place, self.entry.text.strip())
             self.entry = None
@@ -189,9 +187,8 @@ class ShortlistPane(Pane):
             self.entry.press(event.key, event.character)
         self.app.redraw()
 
-    def on_paste(self, event: Paste) -> None:
+    def pasted(self, text: str) -> None:
         """Type what was pasted."""
-        if self.entry is not None:
-            event.stop()
-            self.entry.insert(event.text)
-            self.app.redraw()
+        assert self.entry
+        self.entry.insert(text)
+        self.app.redraw()

@@ -9,6 +9,7 @@ from dataclasses import dataclass, field, replace
 from threading import Condition, Thread
 
 from visionplan.brief.model import Brief
+from visionplan.brief.read import parse_brief
 from visionplan.catalogue.items import Catalogue
 from visionplan.faults import InputError
 from visionplan.solve import concede, judge_one, rank, tolls
@@ -130,7 +131,8 @@ class Solver:
         elif request.kind == "take":
             assert request.concession
             taken = take(request.text, brief.source, catalogue, request.concession)
-            self._answer(Answer(request, taken=taken))
+            ranking = rank(parse_brief(taken.text, brief.source), catalogue, request.order, request.top, False)
+            self._answer(Answer(request, ranking=ranking, taken=taken))
         elif request.kind == "tolls":
             self._tolls(request)
 

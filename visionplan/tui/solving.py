@@ -169,4 +169,4 @@ class Solving:
             )
             told = f"Taken: {lines}{further}. Now {count}. u takes it back."
         self.tell(told)  # type: ignore[attr-defined]
-        self.brief_changed()  # type: ignore[attr-defined]
+        self._take_ranking(answer)

@@ -1,11 +1,10 @@
 """What is wrong with an input, as data; only the edges of the program word it."""
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from typing import NamedTuple
 
 
-@dataclass(frozen=True)
-class Fault:
+class Fault(NamedTuple):
     """One thing wrong with an input file."""
 
     file: str

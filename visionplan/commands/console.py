@@ -5,7 +5,7 @@ import io
 import os
 import sys
 from contextlib import suppress
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from visionplan.faults import Fault, InputError
 from visionplan.text import clean
@@ -112,8 +112,7 @@ def complain(*messages: str) -> None:
             sys.stderr.flush()
 
 
-@dataclass(frozen=True)
-class Screen:
+class Screen(NamedTuple):
     """What standard output can show."""
 
     columns: int

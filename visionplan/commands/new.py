@@ -4,7 +4,6 @@ import argparse
 import os
 from collections.abc import Iterator
 from contextlib import contextmanager
-from shutil import rmtree
 
 from visionplan.commands.console import complain
 from visionplan.demo import DEMO_BRIEF, demo_folder
@@ -64,6 +63,8 @@ def _write_demo(path: str) -> None:
                     with open(copy, "xb") as new:
                         new.write(file.read_bytes())
         except BaseException:
+            from shutil import rmtree
+
             rmtree(path, ignore_errors=True)
             raise
 

@@ -4,7 +4,7 @@ import csv
 import io
 import re
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
 from visionplan.catalogue.heading import nearest
 from visionplan.catalogue.intake.columnmap import SheetMap, Source
@@ -59,7 +59,7 @@ def read_incoming(sheet: Sheet, sheet_map: SheetMap, map_file: str) -> Incoming:
     for fault in written.faults():
         heading = theirs.get(fault.column.partition(" [")[0], fault.column)
         if fault.line is None or not ledger.knows(fault.line, heading):
-            faults.append(replace(fault, column=heading))
+            faults.append(fault._replace(column=heading))
     faults = [_readdressed(fault, places, sheet) for fault in faults]
     faults.sort(key=lambda fault: fault.line or 2**31)
     table = without(ledger.bad, table)
@@ -189,7 +189,7 @@ def _readdressed(fault: Fault, places: dict[str, int], sheet: Sheet) -> Fault:
     """Say the address of a workbook's cell, in place of its heading alone."""
     if not sheet.worksheet or not fault.line or fault.column not in places:
         return fault
-    return replace(fault, column=f"{sheet.column(places[fault.column])}{fault.line} {fault.column}")
+    return fault._replace(column=f"{sheet.column(places[fault.column])}{fault.line} {fault.column}")
 
 
 def _unsuited(faults: Sequence[Fault], item: str, map_file: str) -> list[Fault]:

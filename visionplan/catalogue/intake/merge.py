@@ -3,7 +3,7 @@
 import csv
 import io
 import math
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
 import numpy as np
 
@@ -166,7 +166,7 @@ def _checked(merged: Merged, item: str) -> Merged:
         ledger = Ledger(merged.file)
         table = read_table(merged.data, item, ledger)
         if table is None or ledger.fatal or ledger.bad:
-            found = [replace(fault, found=f"with the sheet's cells, {fault.found}") for fault in ledger.faults()]
+            found = [fault._replace(found=f"with the sheet's cells, {fault.found}") for fault in ledger.faults()]
             raise InputError(found)
         merged.table = table
     return merged

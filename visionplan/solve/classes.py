@@ -1,4 +1,8 @@
-"""Cameras that are optically the same: judged once, counted many times."""
+"""Cameras that are optically the same: judged once, counted many times.
+
+Cameras of a class may differ in their length, mass, price and frame rate, of which a rig can only have too much (or too
+little): a class is judged by a stand-in that has the best of each, and so are all its cameras, too well if at all.
+"""
 
 from dataclasses import dataclass
 
@@ -9,6 +13,8 @@ from visionplan.solve.problem import Problem
 _OPTICS = ("line", "P", "wide", "high", "kappa")
 _LIGHT = ("eta", "variance", "saturation")
 _MOTION = ("line_rate", "t_min")
+_STAND_IN = {"camera_length": 1, "camera_mass": 1, "camera_price": 1, "frame_rate": -1}
+"""Symbol → whether less (1) or more (−1) of it is better."""
 
 
 @dataclass(frozen=True)
@@ -43,6 +49,17 @@ class Classes:
         within = np.arange(len(position)) - np.repeat(np.cumsum(count) - count, count)
         return position, self.members[self.begin[classes][position] + within]
 
+    def stand_ins(self, problem: Problem) -> Problem:
+        """The problem with the first camera of each class as good as any of the class in each respect."""
+        camera = dict(problem.camera)
+        for symbol, sign in _STAND_IN.items() if len(self) else ():
+            values = camera[symbol].copy()
+            values[self.first] = sign * np.fmin.reduceat(sign * values[self.members], self.begin[:-1])
+            camera[symbol] = values
+        other = Problem(problem.brief, problem.catalogue, problem.stop, problem.stack)
+        other.__dict__.update(problem.__dict__ | {"camera": camera})
+        return other
+
 
 def classes_of(
     problem: Problem,
@@ -56,19 +73,19 @@ def classes_of(
     `within` are arrays over all cameras by which those of a class are ordered, the first first, then by id; `apart`
     is one that parts classes too.
     """
-    ask, camera = problem.ask, problem.camera
+    brief, camera = problem.brief, problem.camera
     names = list(_OPTICS)
-    if ask.brief.snr is not None:
+    if brief.snr is not None:
         names += _LIGHT
-    if ask.v:
+    if problem.ask.v:
         names += _MOTION
-    if ask.brief.headroom is not None:
-        names.append("camera_length")
-    if ask.brief.max_mass is not None:
-        names.append("camera_mass")
-    if ask.brief.in_hand:
-        names.append("camera_stock")
+    if brief.headroom is not None and (brief.min_contrast is not None or brief.min_yield is not None):
+        names.append("camera_length")  # headroom moves the working point, and a better one may have less contrast
     columns = [camera[name] for name in dict.fromkeys([*names, *symbols])]
+    if brief.in_hand:
+        columns.append(np.minimum(camera["camera_stock"], brief.max_count))
+    stated = {"camera_length": brief.headroom, "camera_mass": brief.max_mass, "camera_price": brief.max_price}
+    columns += [np.isnan(camera[symbol]) for symbol, asked in stated.items() if asked is not None]
     columns += [problem.mount[0], problem.flange[0], *(() if apart is None else (apart,))]
     key = np.column_stack([np.nan_to_num(column.astype(float), nan=-1.0) for column in columns])[cameras]
     number = _numbers(key)

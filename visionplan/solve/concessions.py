@@ -13,7 +13,7 @@ from visionplan.brief.model import Brief
 from visionplan.catalogue.items import Catalogue
 from visionplan.solve import screen, span
 from visionplan.solve.choose import Items
-from visionplan.solve.classes import Classes, classes_of
+from visionplan.solve.classes import classes_of
 from visionplan.solve.demands import MISSED, Demand
 from visionplan.solve.figures import contrasts
 from visionplan.solve.gates import ASKED, Gate
@@ -24,12 +24,14 @@ from visionplan.solve.rig import Concession
 from visionplan.solve.rigs import Rigs
 from visionplan.solve.survey import survey
 
+_BATCH = 64
+"""Pairs of class and lens whose cameras are tried at a time."""
+
 
 @dataclass(frozen=True)
 class _Offer:
     """What one pair would need, and how little that changes."""
 
-    known: bool
     change: float
     camera: str
     lens: str
@@ -38,9 +40,9 @@ class _Offer:
     end: str | None
 
     def beats(self, other: "_Offer | None") -> bool:
-        """Known before unknown, then the least change, then by id."""
-        if other is None or self.known != other.known:
-            return other is None or self.known
+        """The least change first, then by id."""
+        if other is None:
+            return True
         if abs(self.change - other.change) > span.TIE * max(self.change, other.change):
             return self.change < other.change
         return (self.camera, self.lens) < (other.camera, other.lens)
@@ -50,7 +52,7 @@ def concede(brief: Brief, catalogue: Catalogue) -> tuple[Concession, ...]:
     """Every concession by itself, least change first; none when something fits already."""
     problem = Problem(brief, catalogue)
     found = survey(problem, Items.of(problem))
-    return concede_problem(problem, found.count(problem.camera["camera_price"], brief.strict))
+    return concede_problem(problem, found.count())
 
 
 def concede_problem(problem: Problem, fitting: int) -> tuple[Concession, ...]:
@@ -60,13 +62,10 @@ def concede_problem(problem: Problem, fitting: int) -> tuple[Concession, ...]:
     offers = []
     for asked in ASKED:
         conceded = asked.concede if isinstance(asked, Demand) else asked.loosens
-        if not conceded or not asked.asks(problem.ask):
-            continue
-        best: _Offer | None = None
-        for offer in _offers(problem, asked):
-            best = offer if offer.beats(best) else best
-        if best:
-            offers.append((best, asked))
+        if conceded and asked.asks(problem.ask):
+            best = _best_offer(problem, asked)
+            if best:
+                offers.append((best, asked))
     offers.sort(key=lambda entry: entry[0].change)
     return tuple(_concession(offer, asked) for offer, asked in offers)
 
@@ -76,42 +75,69 @@ def _concession(offer: _Offer, asked: Demand | Gate) -> Concession:
     return Concession(asked.name, offer.asked, offer.needed, unit, offer.end, offer.camera, offer.lens)
 
 
-def _offers(problem: Problem, asked: Demand | Gate) -> Iterator[_Offer]:
-    """The best offers of each block of rigs that fit but for one demand or gate."""
-    drop = frozenset({asked.name})
+def _best_offer(problem: Problem, asked: Demand | Gate) -> _Offer | None:
+    """The least change that lets a rig fit but for one demand or gate, among pairs with nothing unknown if there are.
+
+    The classes' stand-ins tell how little each class could do with; their cameras are then tried in that order.
+    """
+    drop = frozenset({asked.name, "yield"} | ({"contrast"} if isinstance(asked, Demand) else set()))
     items = Items.of(problem, drop)
-    price = problem.camera["camera_price"]
-    limit = None if asked.name == "price" else problem.brief.max_price
-    vague = items.camera_unknown | (np.isnan(price) & (limit is not None))
-    cheapest_first = (price,) if asked.name == "price" else ()
-    symbols = asked.symbols if isinstance(asked, Gate) else ()
-    cameras = np.flatnonzero(items.camera < MISSED)
-    classes = classes_of(problem, cameras, symbols, cheapest_first, apart=vague)
-    at_bound = isinstance(asked, Demand)
-    judge = Judge(problem, drop | {"price", "yield"} | ({"contrast"} if at_bound else set()))
-    for rigs in screen.fitting(judge, classes.first, items.lens):
-        fits = rigs.fits & _affordable(problem, classes, rigs, limit)[:, None]
-        if not fits.any():
-            continue
-        unknown = rigs.unknown | items.lens_unknown[rigs.lenses] | vague[rigs.cameras]
-        for give in _gives(rigs, asked):
-            with np.errstate(invalid="ignore", divide="ignore"):
-                looser = fits & (give.loosens * (give.needed - give.asked) > 0) & _sharp(problem, rigs, give.at)
-                change = np.where(looser, np.abs(np.log(give.needed / give.asked)), np.inf)
-            change = np.where(np.isfinite(change), change, np.inf)
-            for known in (True, False):
-                rows = np.flatnonzero(unknown != known)
-                for row, stop in _least(change, rows):
-                    camera = _first_affordable(problem, classes, rigs, row, limit)
-                    yield _Offer(
-                        known,
-                        float(change[row, stop]),
-                        problem.catalogue.cameras["id"][camera],
-                        problem.catalogue.lenses["id"][rigs.lenses[row]],
-                        float(give.asked[row, stop]),
-                        float(give.needed[row, stop]),
-                        give.end,
-                    )
+    classes = classes_of(problem, np.flatnonzero(items.camera < MISSED), apart=items.camera_unknown)
+    standing = Judge(classes.stand_ins(problem), drop)
+    hopes = [_hopes(items, rigs, asked) for rigs in screen.fitting(standing, classes.first, items.lens)]
+    if not hopes:
+        return None
+    camera, lens, change, unknown = (np.concatenate(column) for column in zip(*hopes))
+    judge = Judge(problem, drop)
+    for vague in (False, True):
+        best: _Offer | None = None
+        rows = np.flatnonzero((unknown == vague) & np.isfinite(change))
+        rows = rows[np.argsort(change[rows], kind="stable")]
+        for begin in range(0, len(rows), _BATCH):
+            some = rows[begin : begin + _BATCH]
+            if best and change[some[0]] > best.change * (1 + span.TIE):
+                break
+            position, cameras = classes.spread(classes.number[camera[some]])
+            for offer in _offers(judge, asked, cameras, lens[some][position]):
+                best = offer if offer.beats(best) else best
+        if best:
+            return best
+    return None
+
+
+def _hopes(items: Items, rigs: Rigs, asked: Demand | Gate) -> tuple[np.ndarray, ...]:
+    """Camera, lens, least change and whether anything is unknown, of each rig of a block."""
+    change = np.minimum.reduce([change.min(axis=1) for _, change in _changes(rigs, asked)])
+    unknown = rigs.unknown | items.lens_unknown[rigs.lenses] | items.camera_unknown[rigs.cameras]
+    return rigs.cameras, rigs.lenses, change, unknown
+
+
+def _offers(judge: Judge, asked: Demand | Gate, cameras: np.ndarray, lenses: np.ndarray) -> Iterator[_Offer]:
+    """The least offers of each arrangement of some pairs."""
+    problem = judge.problem
+    for arrangement in problem.ask.arrangements:
+        here = problem.camera["line"][cameras] == arrangement.line
+        rigs = judge.rigs(arrangement, cameras[here], lenses[here])
+        for give, change in _changes(rigs, asked):
+            least = change.min(initial=np.inf)
+            for row, stop in np.argwhere((change <= least * (1 + span.TIE)) & np.isfinite(change)):
+                yield _Offer(
+                    float(change[row, stop]),
+                    problem.catalogue.cameras["id"][rigs.cameras[row]],
+                    problem.catalogue.lenses["id"][rigs.lenses[row]],
+                    float(give.asked[row, stop]),
+                    float(give.needed[row, stop]),
+                    give.end,
+                )
+
+
+def _changes(rigs: Rigs, asked: Demand | Gate) -> Iterator[tuple[Give, np.ndarray]]:
+    """What must give way, and by how much, of each rig and stop that fits but for that; infinite for the others."""
+    for give in _gives(rigs, asked):
+        with np.errstate(invalid="ignore", divide="ignore"):
+            looser = rigs.fits & (give.loosens * (give.needed - give.asked) > 0) & _sharp(rigs, give.at)
+            change = np.where(looser, np.abs(np.log(give.needed / give.asked)), np.inf)
+        yield give, np.where(np.isfinite(change), change, np.inf)
 
 
 def _gives(rigs: Rigs, asked: Demand | Gate) -> list[Give]:
@@ -130,37 +156,9 @@ def _gives(rigs: Rigs, asked: Demand | Gate) -> list[Give]:
     ]
 
 
-def _sharp(problem: Problem, rigs: Rigs, at) -> np.ndarray | bool:
+def _sharp(rigs: Rigs, at) -> np.ndarray | bool:
     """Whether the contrast asked for is there where a demand that gave way just holds."""
-    if at is None or problem.brief.min_contrast is None:
+    least = rigs.case.brief.min_contrast
+    if at is None or least is None:
         return True
-    least = np.minimum.reduce(contrasts(rigs.case, at))
-    return least >= problem.brief.min_contrast * (1 - span.EDGE)
-
-
-def _affordable(problem: Problem, classes: Classes, rigs: Rigs, limit: float | None) -> np.ndarray:
-    """Whether some camera of each rig's class keeps the rig within the price."""
-    if limit is None:
-        return np.full(len(rigs.cameras), True)
-    rest = (rigs.case.lens_price + rigs.case.ring_price)[:, 0]
-    total = rigs.arrangement.cameras * (classes.cheapest[classes.number[rigs.cameras]] + rest)
-    return np.where(np.isnan(total), not problem.brief.strict, total <= limit * (1 + span.EDGE))
-
-
-def _least(change: np.ndarray, rows: np.ndarray) -> np.ndarray:
-    """Row and stop of the least finite changes among some rows."""
-    least = change[rows].min(initial=np.inf)
-    if not np.isfinite(least):
-        return np.zeros((0, 2), int)
-    found = np.argwhere(change[rows] <= least * (1 + span.TIE))
-    return np.column_stack((rows[found[:, 0]], found[:, 1]))
-
-
-def _first_affordable(problem: Problem, classes: Classes, rigs: Rigs, row: int, limit: float | None) -> int:
-    """The first camera of a rig's class that keeps it within the price."""
-    members = classes.spread(classes.number[rigs.cameras[row : row + 1]])[1]
-    if limit is None:
-        return int(members[0])
-    rest = rigs.case.lens_price[row, 0] + rigs.case.ring_price[row, 0]
-    total = rigs.arrangement.cameras * (problem.camera["camera_price"][members] + rest)
-    return int(members[np.isnan(total) | (total <= limit * (1 + span.EDGE))][0])
+    return np.minimum.reduce(contrasts(rigs.case, at)) >= least * (1 - span.EDGE)

@@ -34,8 +34,6 @@ class Gate:
     """The lines of the brief whose dropping drops it."""
     loosens: int = 0
     """Whether a greater (1) or a smaller (−1) value asks for less; 0 where it isn't conceded."""
-    symbols: tuple[str, ...] = ()
-    """Camera symbols that a concession of it tells apart."""
 
 
 def _at_most(got, limit):
@@ -210,7 +208,6 @@ GATES: tuple[Gate, ...] = (
         "mm",
         lines=("motion.speed",),
         loosens=1,
-        symbols=("t_min",),
     ),
     Gate(
         "exposure",
@@ -232,7 +229,6 @@ GATES: tuple[Gate, ...] = (
         "1/s",
         lines=("motion.rate",),
         loosens=-1,
-        symbols=("frame_rate",),
     ),
     Gate(
         "line-scan motion",
@@ -298,7 +294,6 @@ GATES: tuple[Gate, ...] = (
         price,
         lines=("choose.max_price",),
         loosens=1,
-        symbols=("camera_price",),
     ),
     Gate(
         "mass",

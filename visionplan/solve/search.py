@@ -44,6 +44,8 @@ class _Pairs:
     bound: Key
     priced: bool
     """Whether the last column of the bound is the price of the class's cheapest camera."""
+    may: Callable[[np.ndarray, np.ndarray], np.ndarray]
+    """Whether cameras of pairs (rows of these arrays) are worth judging."""
 
 
 def rank(
@@ -61,7 +63,7 @@ def rank(
     problem = Problem(brief, catalogue)
     items = Items.of(problem)
     found = survey(problem, items, order)
-    fitting = found.count(problem.camera["camera_price"], brief.strict)
+    fitting = found.count()
     judge = Judge(problem)
     cameras, lenses = _best(judge, items, _fitting_pairs(found, order), _fitting_key(order), min(top, fitting), True)
     if len(cameras) < top:
@@ -103,9 +105,9 @@ def _batches(judge: Judge, pairs: _Pairs, top: int) -> Iterator[tuple[np.ndarray
 
     Classes are spread into their cameras little by little: what is spread and worse than the next class waits.
     """
-    price = judge.problem.camera["camera_price"]
-    # cameras of a class differ in nothing that the choice sees but the price, where a price is asked
-    most = None if judge.problem.brief.max_price is not None else top
+    brief, price = judge.problem.brief, judge.problem.camera["camera_price"]
+    # cameras of a class differ in nothing that the choice sees but what a price, mass or headroom asked for bears
+    most = top if (brief.max_price, brief.max_mass, brief.headroom) == (None, None, None) else None
     queue = _front(pairs.bound, _CLASSES + 1)
     at, spread, batch = 0, _CLASSES, min(max(_BATCH, top), _MOST)
     waiting = np.zeros(0, int), np.zeros(0, int), [np.zeros(0) for _ in pairs.bound]
@@ -114,6 +116,8 @@ def _batches(judge: Judge, pairs: _Pairs, top: int) -> Iterator[tuple[np.ndarray
             queue = _front(pairs.bound, 8 * (at + spread))
         some, at, spread = queue[at : at + spread], min(at + spread, len(queue)), 2 * spread
         position, cameras = pairs.classes.spread(pairs.number[some], most)
+        worth = pairs.may(some[position], cameras)
+        position, cameras = position[worth], cameras[worth]
         bound = [column[some][position].astype(float) for column in pairs.bound]
         if pairs.priced:
             bound[-1] += np.nan_to_num(
@@ -162,7 +166,7 @@ def _beyond(bound: list[float], worst: list[float]) -> bool:
 
 def _fitting_pairs(found: Survey, order: str) -> _Pairs:
     bound = {"value": [found.grade, found.unknown, found.price], "price": [found.price]}.get(order, [found.figure])
-    return _Pairs(found.classes, found.number, found.lens, bound, order in ("value", "price"))
+    return _Pairs(found.classes, found.number, found.lens, bound, order in ("value", "price"), found.may)
 
 
 def _fitting_key(order: str) -> Callable[[Chosen], Key]:
@@ -193,14 +197,11 @@ def _missing_pairs(problem: Problem, items: Items) -> _Pairs:
     lenses = len(items.lens)
     clear = np.full(len(classes) * lenses, np.inf)
     least = np.full(len(classes) * lenses, np.inf)
-    for rigs in screen.everything(Judge(problem, frozenset({"price"})), classes.first):
+    for rigs in screen.everything(Judge(classes.stand_ins(problem)), classes.first):
         pair = classes.number[rigs.cameras] * lenses + rigs.lenses
         short = np.where(rigs.fits_span & ~rigs.fits, np.inf, rigs.short).min(axis=1)
         np.minimum.at(clear, pair, np.where(rigs.gates < MISSED, short, np.inf))
         np.minimum.at(least, pair, rigs.short.min(axis=1))
     number, lens = np.divmod(np.arange(len(least)), lenses)
     gate = np.isinf(clear) | missing[classes.first][number] | (items.lens[lens] == MISSED)
-    limit = problem.brief.max_price
-    if limit is not None and not np.isnan(problem.catalogue.spacers["price"]).any():  # unpriced rings may spare it
-        gate |= classes.cheapest[number] + problem.lens["lens_price"][lens] > limit * (1 + span.EDGE)
-    return _Pairs(classes, number, lens, [gate, np.where(gate, least, clear)], False)
+    return _Pairs(classes, number, lens, [gate, np.where(gate, least, clear)], False, lambda pair, camera: camera >= 0)

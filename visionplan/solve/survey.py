@@ -1,11 +1,10 @@
 """The survey: how many pairs fit, and for each class of cameras with a lens how good a rig may be at best."""
 
-from collections.abc import Iterable
 from dataclasses import dataclass
 
 import numpy as np
 
-from visionplan.solve import screen, span
+from visionplan.solve import checks, screen, span
 from visionplan.solve.choose import Items
 from visionplan.solve.classes import Classes, classes_of
 from visionplan.solve.demands import MISSED
@@ -14,14 +13,12 @@ from visionplan.solve.orders import ORDERS, Order
 from visionplan.solve.problem import Problem
 from visionplan.solve.rigs import Rigs
 
-_PRICE = frozenset({"price"})
-"""Judged camera by camera, not class by class."""
-
 
 @dataclass(frozen=True)
 class Survey:
-    """Classes of cameras with lenses, of which at least one rig fits: arrays over them."""
+    """Classes of cameras with lenses, of which a rig of the class's stand-in fits: arrays over them."""
 
+    problem: Problem
     classes: Classes
     number: np.ndarray
     """The class."""
@@ -34,19 +31,41 @@ class Survey:
     """Least price; NaN where none is known."""
     figure: np.ndarray
     """Best figure of the order asked for, its sign on."""
-    affordable: np.ndarray
-    """Greatest price of a camera with which one of its rigs is within the price."""
+    begin: np.ndarray
+    """Where the rigs of each begin in `limits`; one more at the end."""
+    limits: dict[str, np.ndarray]
+    """Camera symbol → the most of it that each rig bears; empty where nothing tells cameras of a class apart."""
 
-    def count(self, camera_price: np.ndarray, strict: bool) -> int:
+    def within(self, rig: np.ndarray, camera: np.ndarray) -> np.ndarray:
+        """Whether cameras stay within what rigs (rows of `limits`) bear; what isn't stated does, unless strict."""
+        ok = np.ones(len(camera), bool)
+        for symbol, limit in self.limits.items():
+            values = self.problem.camera[symbol][camera]
+            ok &= np.where(np.isnan(values), not self.problem.brief.strict, values <= limit[rig])
+        return ok
+
+    def may(self, pair: np.ndarray, camera: np.ndarray) -> np.ndarray:
+        """Whether cameras stay within the most that any rig of their pair (rows of `number`) bears of each."""
+        ok = np.ones(len(camera), bool)
+        for symbol, limit in self.limits.items():
+            values, most = self.problem.camera[symbol][camera], np.maximum.reduceat(limit, self.begin[:-1])
+            ok &= np.isnan(values) | (values <= most[pair])
+        return ok
+
+    def count(self) -> int:
         """How many pairs fit."""
-        if np.isposinf(self.affordable).all():
+        if not self.limits:
             return int(self.classes.size[self.number].sum())
-        total = 0
-        for begin in range(0, len(self.number), screen.CHUNK):
-            some = slice(begin, begin + screen.CHUNK)
-            position, camera = self.classes.spread(self.number[some])
-            price, limit = camera_price[camera], self.affordable[some][position]
-            total += int(np.count_nonzero(np.where(np.isnan(price), not strict, price <= limit)))
+        total, step = 0, screen.CHUNK // 8
+        for at in range(0, len(self.number), step):
+            end = min(at + step, len(self.number))
+            pair = np.repeat(np.arange(at, end), np.diff(self.begin[at : end + 1]))
+            position, camera = self.classes.spread(self.number[pair])
+            ok = self.within(self.begin[at] + position, camera)
+            if len(pair) == end - at:
+                total += int(np.count_nonzero(ok))
+            else:  # a camera may fit by several rigs
+                total += len(np.unique(pair[position[ok]] * len(self.classes.number) + camera[ok]))
         return total
 
 
@@ -57,57 +76,72 @@ def classes_for(
     chosen = ORDERS[order]
     price, unknown = problem.camera["camera_price"], items.camera_unknown
     within = {"value": (unknown, price), "price": (price, unknown)}.get(order, (unknown,))
-    return classes_of(problem, cameras, chosen.symbols if chosen else (), within, apart)
+    symbols = chosen.symbols if chosen else ()
+    if chosen and problem.brief.headroom is not None:
+        symbols += ("camera_length",)  # headroom moves the working point, and with it the figure either way
+    return classes_of(problem, cameras, symbols, within, apart)
 
 
 def survey(problem: Problem, items: Items, order: str = "value", drop: frozenset[str] = frozenset()) -> Survey:
-    """Find every class of cameras and lens of which a rig fits, price left aside."""
+    """Find every class of cameras and lens of which a rig fits, by the class's stand-in."""
     classes = classes_for(problem, items, np.flatnonzero(items.camera < MISSED), order)
-    judge = Judge(problem, drop | _PRICE)
-    limit = None if "price" in drop else problem.brief.max_price
-    parts = [_part(classes, rigs, ORDERS[order], limit) for rigs in screen.fitting(judge, classes.first, items.lens)]
-    columns = [np.concatenate(column) for column in zip(*parts)] if parts else [np.zeros(0, int)] * 7
-    return Survey(classes, *_grouped(columns, len(items.lens)))
+    judge = Judge(classes.stand_ins(problem), drop)
+    parts = [_part(classes, rigs, ORDERS[order], drop) for rigs in screen.fitting(judge, classes.first, items.lens)]
+    if not parts:
+        none = np.zeros(0, int)
+        return Survey(problem, classes, none, none, none, none, none, none, np.zeros(1, int), {})
+    columns = {name: np.concatenate([part[name] for part in parts]) for name in parts[0]}
+    return _grouped(problem, classes, columns, len(items.lens))
 
 
-def _part(classes: Classes, rigs: Rigs, order: Order | None, limit: float | None) -> tuple[np.ndarray, ...]:
-    """Of the rigs of a block that fit: class, lens, grade, unknown, price, figure, affordable."""
+def _part(classes: Classes, rigs: Rigs, order: Order | None, drop: frozenset[str]) -> dict[str, np.ndarray]:
+    """Of the rigs of a block that fit: class, lens, grade, unknown, price, figure, and what they bear."""
     rows = np.flatnonzero(rigs.fit)
     case, count = rigs.case, rigs.arrangement.cameras
-    number, lens = classes.number[rigs.cameras[rows]], rigs.lenses[rows]
+    number = classes.number[rigs.cameras[rows]]
     rest = np.broadcast_to(case.lens_price + case.ring_price, (len(rigs.lenses), 1))[rows, 0]
     figure = np.zeros(len(rows))
     if order:
         values = np.broadcast_to(order.sign * order.figure(rigs), rigs.fits.shape)[rows]
         figure = np.fmin.reduce(np.where(rigs.fits[rows], values, np.nan), axis=1)
-    affordable = np.full(len(rows), np.inf)
-    if limit is not None:
-        most = limit * (1 + span.EDGE) / count - rest
-        affordable = np.where(np.isnan(most), -np.inf if case.brief.strict else np.inf, most)
-    return (
-        number,
-        lens,
-        rigs.best_grade[rows],
-        rigs.unknown[rows],
-        count * (classes.cheapest[number] + rest),
-        figure,
-        affordable,
-    )
+    return {
+        "number": number,
+        "lens": rigs.lenses[rows],
+        "grade": rigs.best_grade[rows],
+        "unknown": rigs.unknown[rows],
+        "price": count * (classes.cheapest[number] + rest),
+        "figure": figure,
+    } | _borne(rigs, rows, rest, drop)
 
 
-def _grouped(columns: Iterable[np.ndarray], lenses: int) -> list[np.ndarray]:
-    """One row for each class and lens, the best of each column."""
-    number, lens, grade, unknown, price, figure, affordable = columns
-    pair = number.astype(np.int64) * lenses + lens
+def _borne(rigs: Rigs, rows: np.ndarray, rest: np.ndarray, drop: frozenset[str]) -> dict[str, np.ndarray]:
+    """The most price, mass and length of a camera with which each rig fits."""
+    case, brief, found = rigs.case, rigs.case.brief, {}
+    if brief.max_price is not None and "price" not in drop:
+        found["camera_price"] = brief.max_price * (1 + span.EDGE) / rigs.arrangement.cameras - rest
+    if brief.max_mass is not None and "mass" not in drop:
+        found["camera_mass"] = brief.max_mass * (1 + span.EDGE) - case.lens_mass[rows, 0]
+    if brief.headroom is not None and "headroom" not in drop:
+        lo, hi = np.fmax(rigs.bounds.lo, case.M), np.fmin(rigs.bounds.hi, case.M)
+        with np.errstate(invalid="ignore", divide="ignore", over="ignore"):
+            without = checks.headroom(case.varied(camera_length=0.0), np.clip(1.0, lo, hi))
+        room = np.broadcast_to(brief.headroom * (1 + span.EDGE) - without, rigs.fits.shape)
+        found["camera_length"] = np.where(rigs.fits, room, -np.inf)[rows].max(axis=1)
+    vague = -np.inf if brief.strict else np.inf
+    return {symbol: np.where(np.isnan(most), vague, most) for symbol, most in found.items()}
+
+
+def _grouped(problem: Problem, classes: Classes, columns: dict[str, np.ndarray], lenses: int) -> Survey:
+    """One row for each class and lens, the best of each column; the limits rig by rig."""
+    pair = columns["number"].astype(np.int64) * lenses + columns["lens"]
     order = np.argsort(pair, kind="stable")
     pair = pair[order]
     begin = np.flatnonzero(np.diff(pair, prepend=-1))
-    if not len(begin):
-        return [np.asarray(column) for column in columns]
-    best = (np.minimum, np.logical_and, np.fmin, np.fmin, np.maximum)
-    rest = (grade, unknown, price, figure, affordable)
-    return [
-        pair[begin] // lenses,
-        pair[begin] % lenses,
-        *(reduce.reduceat(column[order], begin) for reduce, column in zip(best, rest)),
-    ]
+    best = {"grade": np.minimum, "unknown": np.logical_and, "price": np.fmin, "figure": np.fmin}
+    grouped = {
+        name: reduce.reduceat(columns[name][order], begin) if len(begin) else columns[name]
+        for name, reduce in best.items()
+    }
+    number, lens = np.divmod(pair[begin], lenses)
+    limits = {name: values[order] for name, values in columns.items() if name.startswith("camera_")}
+    return Survey(problem, classes, number, lens, **grouped, begin=np.append(begin, len(pair)), limits=limits)

@@ -56,6 +56,8 @@ class Classes:
             values = camera[symbol].copy()
             values[self.first] = sign * np.fmin.reduceat(sign * values[self.members], self.begin[:-1])
             camera[symbol] = values
+        for shared in ("lens", "flange", "flange_unknown", "mount", "thread", "joinable"):
+            getattr(problem, shared)  # worked out once for both
         other = Problem(problem.brief, problem.catalogue, problem.stop, problem.stack)
         other.__dict__.update(problem.__dict__ | {"camera": camera})
         return other
@@ -87,8 +89,7 @@ def classes_of(
     stated = {"camera_length": brief.headroom, "camera_mass": brief.max_mass, "camera_price": brief.max_price}
     columns += [np.isnan(camera[symbol]) for symbol, asked in stated.items() if asked is not None]
     columns += [problem.mount[0], problem.flange[0], *(() if apart is None else (apart,))]
-    key = np.column_stack([np.nan_to_num(column.astype(float), nan=-1.0) for column in columns])[cameras]
-    number = _numbers(key)
+    number = _numbers([np.nan_to_num(column[cameras].astype(float), nan=-1.0) for column in columns])
     order = np.lexsort((*(array[cameras] for array in (problem.id_rank[0], *reversed(within))), number))
     count = np.bincount(number) if len(number) else np.zeros(0, int)
     begin = np.concatenate(([0], np.cumsum(count)))
@@ -100,8 +101,11 @@ def classes_of(
     return Classes(members[begin[:-1]], begin, members, of_all, cheapest)
 
 
-def _numbers(key: np.ndarray) -> np.ndarray:
-    """Number of each row, equal rows alike."""
-    rows = np.ascontiguousarray(key).view(f"V{key.shape[1] * key.itemsize}").ravel().tolist() if key.size else []
-    seen: dict[bytes, int] = {}
-    return np.array([seen.setdefault(row, len(seen)) for row in rows], int)
+def _numbers(columns: list[np.ndarray]) -> np.ndarray:
+    """Number of each row, rows alike in every column alike."""
+    number = np.zeros(len(columns[0]), int)
+    for column in columns:
+        if len(column) and (column != column[0]).any():
+            of_column = np.unique(column, return_inverse=True)[1]
+            number = np.unique(number * (of_column.max() + 1) + of_column, return_inverse=True)[1]
+    return number

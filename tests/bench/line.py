@@ -11,6 +11,7 @@ import sys
 import termios
 import time
 from collections.abc import Callable, Mapping, Sequence
+from contextlib import suppress
 from pathlib import Path
 
 ROOT = Path(__file__).resolve().parents[2]
@@ -77,10 +78,8 @@ class Line:
 
     def close(self, how: int = signal.SIGKILL) -> int:
         """End the program, if it hasn't ended; its status."""
-        try:
+        with suppress(ProcessLookupError):
             os.kill(self.pid, how)
-        except ProcessLookupError:
-            pass
         self.read(0.5)
         status = os.waitpid(self.pid, 0)[1]
         os.close(self.handle)

@@ -42,10 +42,14 @@ class Desk:
 
     async def press(self, *keys):
         for key in keys:
-            character = key if len(key) == 1 else next((one for one, name in NAMES.items() if name == key), None)
-            self.app.post_message(Key(NAMES.get(key, key), character))
+            self.app.post_message(self.event(key))
             await self.pilot.pause(0)
         await settled(self.app, self.pilot)
+
+    @staticmethod
+    def event(key):
+        character = key if len(key) == 1 else next((one for one, name in NAMES.items() if name == key), None)
+        return Key(NAMES.get(key, key), character)
 
     async def type(self, text):
         await self.press(*(NAMES.get(character, character) for character in text))

@@ -1,10 +1,12 @@
 """What the interface sends to a terminal, measured on a pty at 80 × 24 in 16 colours."""
 
+import os
 import re
+import sys
 
 import pytest
 
-from tests.bench.line import interface
+from tests.bench.line import Line, interface
 from visionplan.demo import demo_folder
 
 DOWN, UP, PAGE_DOWN, PAGE_UP = "\x1b[B", "\x1b[A", "\x1b[6~", "\x1b[5~"
@@ -76,3 +78,26 @@ def test_it_leaves_the_terminal_as_it_was(opened):
     assert b"\x1b[?1049l" in line.received
     assert b"\x1b[?25h" in line.received
     assert b"Traceback" not in line.received
+
+
+def test_a_fault_of_the_program_leaves_the_screen_and_the_work_in_order(tmp_path):
+    script = """
+from visionplan.cli import run
+from visionplan.tui.rigs_pane import RigsPane
+import sys
+def broken(self):
+    raise RuntimeError("broken on purpose")
+RigsPane.action_order = broken
+sys.exit(run(["open"]))
+"""
+    line = Line([sys.executable, "-c", script], tmp_path)
+    line.until(lambda sent: b"pairs fit" in sent)
+    line.press(" ", SECOND)
+    said = line.press("o", 3 * SECOND)
+    assert os.waitstatus_to_exitcode(line.close()) == 2
+    assert b"Traceback" not in said
+    assert b"the work is kept" in said
+    assert "broken on purpose" in (tmp_path / "visionplan" / "fault.txt").read_text()
+    again = interface(tmp_path)
+    again.until(lambda sent: b"4 Shortlist 1" in sent)
+    again.close()

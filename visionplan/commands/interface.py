@@ -1,6 +1,7 @@
 """open: the terminal interface, on a brief or on the work left off."""
 
 import argparse
+import gc
 import os
 import sys
 
@@ -28,6 +29,8 @@ def run(args: argparse.Namespace) -> int:
     if not interactive():
         found = "standard input or output is no terminal"
         raise InputError([Fault("open", found, "a terminal; for pipes there are rank, explain and concede")])
+    # A collection of garbage amid so many imports finds none and costs a tenth of the start; `start` turns it on again.
+    gc.disable()
     os.environ.setdefault("TEXTUAL_ANIMATIONS", "none")
     from visionplan.tui.start import start
 

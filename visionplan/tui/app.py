@@ -80,6 +80,8 @@ class PlanApp(Filing, Solving, App[None]):
         self.palette = palette
         self.wide = False
         self.message: tuple[str, str] | None = None
+        self.broken: Exception | None = None
+        """What ended the interface, where it wasn't the person at it."""
         self._after: dict[Page, Callable] = {}
         """What follows the answer of each page that is shown."""
         self.head, self.foot, self.small = Head(), Foot(), Small()
@@ -87,6 +89,10 @@ class PlanApp(Filing, Solving, App[None]):
         self.panes: tuple[Pane, ...] = (self.brief_pane, self.rigs, self.rig_pane, self.shortlist)
         self.pane: Pane = self.rigs
         """The view in use."""
+        for theme in THEMES:
+            self.register_theme(theme)
+        # before the style sheet is read, or it would be read twice
+        self.wear(self.state.settings.get("palette", palette) if palette != "plain" else palette)
         Filing.__init__(self, reading)
         Solving.__init__(self)
 
@@ -102,9 +108,6 @@ class PlanApp(Filing, Solving, App[None]):
 
     def on_mount(self) -> None:
         """Begin with the work as it was left."""
-        for theme in THEMES:
-            self.register_theme(theme)
-        self.wear(self.state.settings.get("palette", self.palette) if self.palette != "plain" else "plain")
         self.arrange()
         self.opened()
 
@@ -426,6 +429,14 @@ class PlanApp(Filing, Solving, App[None]):
             else:
                 self.action_save_as(self.end)
         self.redraw()
+
+    def _handle_exception(self, error: Exception) -> None:
+        """Leave the screen in order; `start` words what went wrong."""
+        if self.is_headless:
+            super()._handle_exception(error)
+        elif self.broken is None:
+            self.broken = error
+            self.exit(return_code=2)
 
     def end(self) -> None:
         """Leave."""

@@ -13,7 +13,6 @@ from visionplan.catalogue.folder import read_catalogue
 from visionplan.catalogue.items import Catalogue
 from visionplan.demo import demo_folder
 from visionplan.faults import Fault, InputError
-from visionplan.report.shortlist import shortlist_csv, shortlist_json, shortlist_markdown
 from visionplan.text import clean
 from visionplan.tui.beside import beside
 from visionplan.tui.clipboard import MOST, advice, sequence
@@ -224,6 +223,8 @@ class Filing:
             marked = self.state.work.marks
             self.tell("The shortlist is still being judged." if marked else "Nothing is on the shortlist.", "warn")
             return None
+        from visionplan.report.shortlist import shortlist_csv, shortlist_json, shortlist_markdown
+
         system = self.state.brief.units
         if form == "csv":
             return shortlist_csv(ranking, entries, system)

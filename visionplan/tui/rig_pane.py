@@ -6,10 +6,8 @@ from typing import ClassVar
 
 from textual.binding import Binding, BindingType
 
-from visionplan.report.elevation import elevation_rows
 from visionplan.report.figures import FIGURES, room, short
 from visionplan.report.remarks import pair
-from visionplan.report.spanchart import span_rows
 from visionplan.report.words import asked_words, got_words, limits
 from visionplan.solve.rig import Rig
 from visionplan.solve.settings import stacks_for, stops_of
@@ -78,6 +76,10 @@ class RigPane(Pane):
         if rig is None:
             text = "Nothing is looked at yet. In view 2 put the cursor on a rig and press Enter."
             return [[], *paragraph(text, width - 4, "dim", "  ")]
+        # not needed for the first screen, so not imported for it
+        from visionplan.report.elevation import elevation_rows
+        from visionplan.report.spanchart import span_rows
+
         system, ascii = self.state.brief.units, self.app.ascii
         rows: list[Row] = list(span_rows(rig, width - 1, ascii, system))
         self._parts = {"chart": 0, "elevation": len(rows) + 1}

@@ -137,6 +137,8 @@ class Solver:
             self._tolls(request)
 
     def _tolls(self, request: Request) -> None:
+        import tomlkit  # noqa: F401, so that the first key typed into a value needn't wait for it
+
         found: dict[str, int] = {}
         for line in sorted(request.brief.stated):
             with self._change:

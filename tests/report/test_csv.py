@@ -58,7 +58,7 @@ def test_no_text_cell_starts_a_formula(name):
 
 
 def test_numbers_stay_numbers():
-    rig = replace(small().rigs[0], contrast=replace(small().rigs[0].contrast, above=-0.25))
+    rig = replace(small().rigs[0], contrast=small().rigs[0].contrast._replace(above=-0.25))
     row = read(ranking_csv(replace(small(), rigs=(rig,))))[0]
     assert float(row["contrast nearest [%]"]) == -25
 

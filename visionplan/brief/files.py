@@ -2,7 +2,6 @@
 
 import errno
 import os
-import secrets
 import stat
 import sys
 from contextlib import suppress
@@ -76,9 +75,11 @@ def write_atomically(path: str | PathLike[str], text: str) -> None:
 
 def _replace(path: str, data: bytes) -> None:
     """Write beside the file, then put it in its place."""
+    from secrets import token_hex  # takes longer to load than a brief to read
+
     folder = os.path.dirname(path)
     before = _status(path)
-    beside = os.path.join(folder, f".{secrets.token_hex(8)}.tmp")
+    beside = os.path.join(folder, f".{token_hex(8)}.tmp")
     handle = os.open(beside, os.O_WRONLY | os.O_CREAT | os.O_EXCL | getattr(os, "O_BINARY", 0), 0o666)
     try:
         with os.fdopen(handle, "wb") as file:

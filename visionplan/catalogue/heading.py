@@ -1,6 +1,5 @@
 """The heading of a catalogue file: which column is which, in what unit."""
 
-import difflib
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass, field
@@ -88,7 +87,9 @@ def missing(column: Column, heading: Heading, ledger: Ledger) -> None:
 def nearest(name: str, others: Iterable[str]) -> str | None:
     """Find what is probably meant by a name that is slightly wrong."""
     alike = {split_heading(other[:80])[0]: other for other in islice(others, _MOST_COMPARED)}
-    found = difflib.get_close_matches(split_heading(name[:80])[0], list(alike), 1, 0.8)
+    from difflib import get_close_matches
+
+    found = get_close_matches(split_heading(name[:80])[0], list(alike), 1, 0.8)
     return alike[found[0]] if found else None
 
 

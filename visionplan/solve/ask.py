@@ -3,6 +3,7 @@
 from dataclasses import dataclass
 from functools import cached_property
 from math import inf, tan
+from typing import NamedTuple
 
 from visionplan.brief.model import Brief
 from visionplan.optics.light import irradiance_of
@@ -12,8 +13,7 @@ DEFAULT_MOSAIC = 1.4
 DEFAULT_CABLE_ROOM = 50.0
 
 
-@dataclass(frozen=True)
-class Arrangement:
+class Arrangement(NamedTuple):
     """How the cameras stand over the field: which way they are turned and how many share it."""
 
     portrait: bool
@@ -28,7 +28,7 @@ class Arrangement:
         return self.nx * self.ny
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Ask:
     """The derived numbers of a brief. Lengths in mm, times in s; `inf` for no limit."""
 

@@ -14,7 +14,7 @@ from visionplan.solve.problem import Problem
 from visionplan.solve.rigs import Rigs
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Items:
     """The gates of cameras alone and of lenses alone, row by row of their tables."""
 
@@ -42,7 +42,7 @@ def _clear(count: int) -> np.ndarray:
     return np.full(count, MET)
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Chosen:
     """The rig chosen for each of some pairs: arrays over the pairs."""
 

@@ -23,7 +23,7 @@ Concede = Callable[[Case, Any, Any], list[Give]]
 """From the interval that the other demands leave."""
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Demand:
     """One thing the cell asks for that holds on an interval of the magnification."""
 

@@ -1,7 +1,6 @@
 """Judging one pair: as the search would plan it, or as a rig that stands already."""
 
 from collections.abc import Sequence
-from difflib import get_close_matches
 
 import numpy as np
 
@@ -113,6 +112,8 @@ def _stack(catalogue: Catalogue, camera: int, lens: int, rings: Sequence[str]) -
 def _row(table: Table, id: str) -> int:
     if id in table["id"]:
         return table["id"].index(id)
+    from difflib import get_close_matches
+
     near = get_close_matches(id, table["id"], 3)
     expected = f"one like {', '.join(near)}" if near else "an id of its list"
     raise _fault(table.item, f"the catalogue has no {id!r} among its {table.item}", expected)

@@ -21,7 +21,7 @@ from visionplan.solve.stacks import Stacks, stacks_between
 DEFAULT_TRANSMITTANCE = 0.9
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Problem:
     """A brief, a catalogue, and what follows from them once for all."""
 

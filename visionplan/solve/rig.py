@@ -1,7 +1,7 @@
 """What a judgement yields: plain data for reports and interface."""
 
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, NamedTuple
 
 if TYPE_CHECKING:
     from visionplan.brief.model import Brief
@@ -11,8 +11,7 @@ Value = float | str | tuple[float, float] | None
 """A number in the verdict's unit, a range of them, words, or nothing known."""
 
 
-@dataclass(frozen=True)
-class Verdict:
+class Verdict(NamedTuple):
     """How one demand or gate came out for one rig."""
 
     name: str
@@ -30,8 +29,7 @@ class Verdict:
     """Whether no magnification holds it (lo and hi are None then)."""
 
 
-@dataclass(frozen=True)
-class Contrast:
+class Contrast(NamedTuple):
     """Modulation of the smallest feature in focus, at the nearest and at the farthest plane; negative when reversed."""
 
     focus: float
@@ -39,7 +37,7 @@ class Contrast:
     below: float
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Rig:
     """A pair with its spacer stack, f-stop, orientation, camera grid and working point. Lengths in mm."""
 
@@ -108,7 +106,7 @@ class Concession:
     lens: str
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Ranking:
     """The rigs found for a brief."""
 

@@ -12,10 +12,9 @@ from visionplan.solve.case import Case
 from visionplan.solve.demands import MET, MISSED, UNKNOWN, Demand, judge
 from visionplan.solve.figures import contrasts
 from visionplan.solve.gates import Gate, judge_gate
-from visionplan.solve.tolerance import share
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Bounds:
     """Intersections of demands: picture and place apart."""
 
@@ -61,7 +60,7 @@ class Bounds:
         return np.minimum(self.hi_p, self.hi_place)
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Rigs:
     """Rigs in one arrangement, each with every stop of its lens: arrays of shape (rigs,) and (rigs, stops)."""
 
@@ -148,6 +147,8 @@ class Rigs:
         found = np.full(self.fits.shape, np.nan)
         rows, stops = np.nonzero(self.fits)
         if len(rows):
+            from visionplan.solve.tolerance import share
+
             some = self.case.pick(self.arrangement, rows, stops)
             found[rows, stops] = share(some, self.point[rows, stops][:, None])[:, 0]
         return found
@@ -177,5 +178,7 @@ def stop_code(gate: Gate, case: Case, point: np.ndarray) -> np.ndarray:
     if gate.name == "contrast":
         case.least_contrast = np.minimum.reduce(contrasts(case, point))
     else:
+        from visionplan.solve.tolerance import share
+
         case.share = share(case, point)
     return np.where(np.isfinite(point), judge_gate(gate, case), MISSED)[:, 0]

@@ -5,6 +5,7 @@ from dataclasses import dataclass
 from itertools import combinations_with_replacement
 from math import inf, isnan
 from operator import itemgetter
+from typing import NamedTuple
 
 import numpy as np
 
@@ -15,7 +16,7 @@ MOST_RINGS = 3
 SAME_LENGTH = 1e-9
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Stacks:
     """Every stack between two threads, shortest first; the first is the empty one, whether it joins them or not."""
 
@@ -35,8 +36,7 @@ NO_RINGS = Stacks(np.zeros(1), np.zeros(1), np.zeros(1, int), np.zeros(1), np.on
 """What there is where a catalogue has no rings at all."""
 
 
-@dataclass(frozen=True)
-class _Ring:
+class _Ring(NamedTuple):
     length: float
     travel: float
     adapter: bool

@@ -8,7 +8,7 @@ from visionplan.solve.rig import Concession, Ranking, Rig, Verdict
 
 
 def ranking_json(ranking: Ranking) -> str:
-    """One JSON document, the same bytes for the same ranking: keys in fixed order, floats of 10 significant digits."""
+    """One JSON document, a rig a line; the same bytes for the same ranking, floats of 10 significant digits."""
     catalogue = ranking.catalogue
     document = {
         "brief": {"title": ranking.brief.title},
@@ -23,7 +23,17 @@ def ranking_json(ranking: Ranking) -> str:
         "rigs": [_rig(rig) for rig in ranking.rigs],
         "concessions": [_concession(given) for given in ranking.concessions or ()],
     }
-    return json.dumps(_plain(document), indent=2, allow_nan=False) + "\n"
+    return "{\n" + ",\n".join(f"{_line(key)}: {_lines(value)}" for key, value in document.items()) + "\n}\n"
+
+
+def _lines(value: Any) -> str:
+    """A list one item a line, anything else on one."""
+    return "[\n" + ",\n".join(map(_line, value)) + "\n]" if isinstance(value, list) and value else _line(value)
+
+
+def _line(value: Any) -> str:
+    # With an indent json would take its slow encoder, written in Python.
+    return json.dumps(_plain(value), allow_nan=False)
 
 
 def _rig(rig: Rig) -> dict[str, Any]:
@@ -76,10 +86,12 @@ def _concession(given: Concession) -> dict[str, Any]:
 
 def _plain(value: Any) -> Any:
     """Only what JSON has: no NaN, no infinity, no negative zero, no more digits than are meant."""
-    if isinstance(value, dict):
-        return {key: _plain(own) for key, own in value.items()}
-    if isinstance(value, list | tuple):
-        return [_plain(own) for own in value]
+    if value is None or isinstance(value, str):
+        return value
     if isinstance(value, float):
         return float(f"{value:.10g}") + 0.0 if math.isfinite(value) else None
+    if isinstance(value, dict):
+        return {key: _plain(own) for key, own in value.items()}
+    if isinstance(value, (list, tuple)):
+        return [_plain(own) for own in value]
     return value

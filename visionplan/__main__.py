@@ -1,5 +1,6 @@
 """The way in: Ctrl-C is seen to before anything else is imported."""
 
+import gc
 import os
 import sys
 
@@ -14,6 +15,8 @@ def main() -> int:
             signal.signal(signal.SIGINT, lambda *_: os._exit(130))
     except KeyboardInterrupt:
         os._exit(130)
+    # A command ends before garbage is worth the search for it; the interface, which stays, turns it on again.
+    gc.disable()
     from visionplan.cli import run
 
     return run(sys.argv[1:])

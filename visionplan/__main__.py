@@ -17,6 +17,8 @@ def main() -> int:
         os._exit(130)
     # A command ends before garbage is worth the search for it; the interface, which stays, turns it on again.
     gc.disable()
+    # numpy would start threads that spin while they wait for matrices larger than any here.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     from visionplan.cli import run
 
     return run(sys.argv[1:])

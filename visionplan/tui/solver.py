@@ -6,8 +6,10 @@ tolls are worked out line by line, so that nothing waits for them.
 
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field, replace
+from functools import cache
 from threading import Condition, Thread
 
+from visionplan import units
 from visionplan.brief.model import Brief
 from visionplan.brief.read import parse_brief
 from visionplan.catalogue.items import Catalogue
@@ -137,8 +139,6 @@ class Solver:
             self._tolls(request)
 
     def _tolls(self, request: Request) -> None:
-        import tomlkit  # noqa: F401, so that the first key typed into a value needn't wait for it
-
         found: dict[str, int] = {}
         for line in sorted(request.brief.stated):
             with self._change:
@@ -147,6 +147,7 @@ class Solver:
                     return
             found |= tolls(replace(request.brief, stated=frozenset({line})), request.catalogue)
         self._answer(Answer(request, tolls=found))
+        _warm()
 
 
 def judged(brief: Brief, catalogue: Catalogue, mark: Mark) -> Rig | str:
@@ -165,3 +166,11 @@ def moved(rig: Rig | None, mark: Mark) -> Rig | str:
         return variant(rig, None, mark.at, mark.stop, mark.rings, mark.orientation)
     except InputError as error:
         return error.faults[0].found
+
+
+@cache
+def _warm() -> None:
+    """Import what the first typed value would else wait for: the editor of TOML, and rarer units."""
+    import tomlkit  # noqa: F401
+
+    units.parse("1 furlong", "mm")

@@ -11,6 +11,7 @@ from visionplan.brief.fields import BY_KEY, LINES, SECTIONS, Line, expected
 from visionplan.brief.forms import value_text, value_texts
 from visionplan.brief.model import Brief
 from visionplan.faults import Fault, InputError
+from visionplan.text import shorten
 from visionplan.tui.entry import Entry
 from visionplan.tui.pane import Item, Pane
 from visionplan.tui.rigs_table import preview
@@ -77,13 +78,13 @@ class BriefPane(Pane):
         tolls = self._toll(line.key, width > 60)
         values = width - 2 - names - sum(len(text) for text, _ in tolls) - 1
         if self.entry and here:
-            return [mark, cell(name, names, "strong"), *self.entry.row(values), (" ", ""), *tolls]
+            return [mark, cell(shorten(name, names - 1), names, "strong"), *self.entry.row(values), (" ", ""), *tolls]
         value = texts[line.key] if asked else _held(self.state.brief)[line.key]
         shown = value if asked else f"not asked ({value})" if value not in ("", "any") else "not asked"
         role = "" if asked else "dim"
         return [
             mark,
-            cell(name, names, f"{role} {look}"),
+            cell(shorten(name, names - 1), names, f"{role} {look}"),
             cell(shown, values, f"{role or 'strong'} {look}"),
             (" ", look),
             *tolls,
@@ -130,7 +131,7 @@ class BriefPane(Pane):
         """What the line means, and what its toll says."""
         line = self.line
         toll = (self.state.results.tolls or {}).get(line.key)
-        cost = f" Without this line {toll:,} more pairs would fit." if toll else ""
+        cost = f" Without this line {toll:,} more {'pair' if toll == 1 else 'pairs'} would fit." if toll else ""
         if self.entry:
             return f"{line.doc}: {expected(line)}."
         return (

@@ -16,7 +16,7 @@ from visionplan.optics.light import noise_variance
 from visionplan.optics.mounts import FLANGE_DISTANCE, thread
 from visionplan.optics.stops import stops_between
 from visionplan.solve.ask import Arrangement, Ask
-from visionplan.solve.stacks import Stacks, stacks_between
+from visionplan.solve.stacks import Stacks, joined_threads, stacks_between
 
 DEFAULT_TRANSMITTANCE = 0.9
 
@@ -114,19 +114,17 @@ class Problem:
             return
         camera_thread, lens_thread, names = self.thread
         pair = camera_thread[cameras] * len(names) + lens_thread[lenses]
-        for number in np.unique(pair):
+        for number in np.flatnonzero(np.bincount(pair)):  # np.unique would load numpy.ma
             yield np.flatnonzero(pair == number), self._stacks(*divmod(int(number), len(names)), count)
 
     @cached_property
     def joinable(self) -> np.ndarray:
         """Whether a camera's thread (row) and a lens's (column) are equal or can be joined by an adapter."""
         names = self.thread[2]
-        joins = np.eye(len(names), dtype=bool)
-        if self.has_rings:
-            for camera in range(len(names)):
-                for lens in range(len(names)):
-                    joins[camera, lens] |= bool(self._stacks(camera, lens, 1).joins.any())
-        return joins
+        if self.stack is not None:
+            return np.eye(len(names), dtype=bool) | self.stack.joins
+        joined = joined_threads(self.catalogue.spacers)
+        return np.array([[camera == lens or (camera, lens) in joined for lens in names] for camera in names], bool)
 
     @cached_property
     def _known_stacks(self) -> dict[tuple[int, int, int], Stacks]:

@@ -1,6 +1,6 @@
 """Spacer stacks: which lengths the rings between a camera and a lens can make, and with which rings."""
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
 from itertools import combinations_with_replacement
 from math import inf, isnan
@@ -55,23 +55,20 @@ def stacks_between(spacers: Table, camera_thread: str, lens_thread: str, cameras
     alike = camera_thread == lens_thread
     empty = (0, 0.0, (), 0.0, 0.0, alike)
     best: dict[tuple[int, int, bool], tuple] = {}
-    for rings in _combinations(units):
-        adapters = sum(ring.adapter for ring, _ in rings)
-        if adapters > (0 if alike else 1) or not (adapters or all(ring.thread == lens_thread for ring, _ in rings)):
+    for rings in _combinations(units, lens_thread):
+        joins = alike or rings[0].adapter
+        length, travel = sum([ring.length for ring in rings]), sum([ring.travel for ring in rings])
+        key = round(length / SAME_LENGTH), round(travel / SAME_LENGTH), joins
+        if key in best and best[key][0] < len(rings):
             continue
-        taken = [units[ring][i] for ring, i in rings]
-        if sum(price for price, _ in taken) == inf:  # no stack of these lengths is cheaper than another
-            taken = [sorted(units[ring], key=itemgetter(1))[i] for ring, i in rings]
-        length, travel = sum(ring.length for ring, _ in rings), sum(ring.travel for ring, _ in rings)
-        stack = (
-            len(rings),
-            sum(price for price, _ in taken),
-            tuple(sorted(id for _, id in taken)),
-            length,
-            travel,
-            alike or adapters == 1,
-        )
-        key = round(length / SAME_LENGTH), round(travel / SAME_LENGTH), stack[-1]
+        kinds = [(units[ring], rings.count(ring)) for ring in dict.fromkeys(rings)]
+        taken = [unit for same, count in kinds for unit in same[:count]]
+        if len(taken) < len(rings):
+            continue
+        price = sum([price for price, _ in taken])
+        if price == inf:  # no stack of these lengths is cheaper than another
+            taken = [unit for same, count in kinds for unit in sorted(same, key=itemgetter(1))[:count]]
+        stack = len(rings), price, tuple(sorted([id for _, id in taken])), length, travel, joins
         if key not in best or stack < best[key]:
             best[key] = stack
     ordered = [empty, *(best[key] for key in sorted(best))]
@@ -86,12 +83,21 @@ def stacks_between(spacers: Table, camera_thread: str, lens_thread: str, cameras
     )
 
 
+def joined_threads(spacers: Table) -> set[tuple[str, str]]:
+    """Threads of camera and of lens between which there is a ring."""
+    return {sides for sides, quantity in zip(_sides(spacers), spacers["quantity"]) if not quantity < 1}
+
+
+def _sides(spacers: Table) -> Iterator[tuple[str, str]]:
+    """Threads of each ring: on its camera's side, on its lens's."""
+    for lens_side, camera_side in zip(spacers["mount"], spacers["camera mount"]):
+        yield thread(camera_side or lens_side), thread(lens_side)
+
+
 def _units(spacers: Table, camera_thread: str, lens_thread: str, cameras: int) -> dict[_Ring, list[tuple[float, str]]]:
     """Price and id of every ring that can stand between the threads, alike rings together, the cheapest first."""
     units: dict[_Ring, list[tuple[float, str]]] = {}
-    for row, id in enumerate(spacers["id"]):
-        lens_side = thread(spacers["mount"][row])
-        camera_side = thread(spacers["camera mount"][row] or spacers["mount"][row])
+    for row, (id, (camera_side, lens_side)) in enumerate(zip(spacers["id"], _sides(spacers))):
         adapter = lens_side != camera_side
         if (lens_side, camera_side) != (lens_thread, camera_thread) and (
             adapter or lens_side not in (lens_thread, camera_thread)
@@ -106,11 +112,13 @@ def _units(spacers: Table, camera_thread: str, lens_thread: str, cameras: int) -
     return units
 
 
-def _combinations(units: dict) -> Iterator[list[tuple[_Ring, int]]]:
-    """Every choice of rings, as rings and which one of its kind each is."""
-    kinds = sorted(units, key=lambda ring: (ring.length, ring.travel))
+def _combinations(rings: Iterable[_Ring], lens_thread: str) -> Iterator[tuple[_Ring, ...]]:
+    """Rings of the lens's thread alone, or an adapter and rings of either thread; fewest first."""
+    kinds = sorted(rings, key=lambda ring: (ring.length, ring.travel))
+    adapters, plain = [ring for ring in kinds if ring.adapter], [ring for ring in kinds if not ring.adapter]
+    of_lens = [ring for ring in plain if ring.thread == lens_thread]
     for count in range(1, MOST_RINGS + 1):
-        for rings in combinations_with_replacement(kinds, count):
-            which = [rings[:i].count(ring) for i, ring in enumerate(rings)]
-            if all(i < len(units[ring]) for ring, i in zip(rings, which)):
-                yield list(zip(rings, which))
+        yield from combinations_with_replacement(of_lens, count)
+        for adapter in adapters:
+            for others in combinations_with_replacement(plain, count - 1):
+                yield adapter, *others

@@ -71,16 +71,11 @@ def longest_pause(ask: Ask) -> float:
 
 
 def _mount(case: Case):
-    allowed = case.brief.mounts
-    if allowed is None:
+    if case.brief.mounts is None:
         return np.where(case.joined, MET, MISSED)
-    cameras = _listed(case.problem.camera_mounts, allowed)[case.cameras]
-    lenses = _listed(case.problem.lens_mounts, allowed)[case.lenses]
-    return np.where(case.joined & (cameras & lenses)[:, None], MET, MISSED)
-
-
-def _listed(mounts: Sequence[str], allowed: Sequence[str]):
-    return np.array([mount in allowed for mount in mounts], bool)
+    cameras, lenses = case.problem.mount_allowed
+    allowed = cameras[case.cameras] & lenses[case.lenses]
+    return np.where(case.joined & allowed[:, None], MET, MISSED)
 
 
 def _image(case: Case):

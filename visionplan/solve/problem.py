@@ -69,6 +69,15 @@ class Problem:
         )
 
     @cached_property
+    def mount_allowed(self) -> tuple[np.ndarray, np.ndarray]:
+        """Whether each camera's and each lens's mount is one that the brief lists."""
+        allowed = self.brief.mounts or ()
+        return (
+            np.array([mount in allowed for mount in self.camera_mounts], bool),
+            np.array([mount in allowed for mount in self.lens_mounts], bool),
+        )
+
+    @cached_property
     def thread(self) -> tuple[np.ndarray, np.ndarray, tuple[str, ...]]:
         """Thread of each camera and of each lens as a number, and the threads' names."""
         threads = {m: thread(m) for m in {*self.camera_mounts, *self.lens_mounts}}

@@ -29,7 +29,7 @@ RIVALS = {
 """Lines that state one thing in two ways: only one of the two may stand."""
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Limits:
     """What a number must lie within, ends included, and its unit."""
 
@@ -43,7 +43,7 @@ class Limits:
     """The unit that the program writes it in, where that isn't `unit`."""
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Line:
     """One line of the brief."""
 

@@ -16,7 +16,7 @@ from visionplan.solve.problem import Problem
 from visionplan.solve.span import EDGE
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Gate:
     """One thing the cell asks for that doesn't depend on the magnification."""
 

@@ -14,7 +14,7 @@ from visionplan.solve import bounds, checks
 from visionplan.solve.case import Case
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Give:
     """What a demand must give way for a rig to fit, where the other demands leave it an interval: arrays over rigs."""
 

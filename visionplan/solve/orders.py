@@ -11,7 +11,7 @@ from visionplan.solve.figures import signal_to_noise_at
 from visionplan.solve.rigs import Rigs
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Order:
     """A figure to order rigs by, at each stop's working point; the smaller the better once the sign is on."""
 

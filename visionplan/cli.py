@@ -10,8 +10,7 @@ from visionplan.faults import InputError
 from visionplan.text import clean
 
 COMMANDS = (interface, rank, explain, sheet, asbuilt, concede, catalogue, new, completion)
-"""In the order that the help lists them; without one of them the interface opens, or off a terminal the help is printed.
-"""
+"""In the order that the help lists them; without any the interface opens, or off a terminal the help is printed."""
 
 _STATUS = """\
 exit status:

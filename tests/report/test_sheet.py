@@ -30,7 +30,18 @@ def flat(text):
 def test_a_fitter_finds_everything_in_the_order_it_is_mounted():
     text = sheet(rig(stop=8.0))
     order = ["MOUNT", "Camera square", "Lens sixteen", "SET", "f-stop", "working distance", "focus ring", "exposure  "]
-    order += ["light  ", "PROVE", "must span", "EXPECT", "field  ", "sampling  ", "depth  ", "ELEVATION", "CAUTIONS", "ASSUMED"]
+    order += [
+        "light  ",
+        "PROVE",
+        "must span",
+        "EXPECT",
+        "field  ",
+        "sampling  ",
+        "depth  ",
+        "ELEVATION",
+        "CAUTIONS",
+        "ASSUMED",
+    ]
     places = [text.find(word) for word in order]
     assert -1 not in places
     assert places == sorted(places)

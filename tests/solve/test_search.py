@@ -9,7 +9,7 @@ import pytest
 from tests.reference.random_works import works
 from visionplan.brief.read import read_brief
 from visionplan.catalogue.folder import read_catalogue
-from visionplan.solve import rank
+from visionplan.solve import concede, judge_one, rank
 from visionplan.solve.choose import Items, choose
 from visionplan.solve.judge import Judge
 from visionplan.solve.orders import ORDERS
@@ -86,3 +86,61 @@ def test_search_agrees_on_works_with_gaps():
         rigs = judged_every_pair(problem)
         for order in ("value", "price", "sampling"):
             assert_agrees(problem, rigs, order, 7)
+
+
+def crowded(seed):
+    """Random works with two more cameras for each, alike but for length, mass, price and frame rate."""
+    brief, catalogue = works(seed)
+    draw = np.random.default_rng(seed)
+    cameras = catalogue.cameras
+    three = np.tile(np.arange(len(cameras)), 3)
+    values = {
+        column: cells[three] if isinstance(cells, np.ndarray) else [cells[row] for row in three]
+        for column, cells in cameras.values.items()
+    }
+    values["id"] = [f"{id}-{number // len(cameras)}" for number, id in enumerate(values["id"])]
+    for column in ("length", "mass", "price", "frame rate"):
+        values[column] = np.round(values[column] * draw.uniform(0.4, 2.0, len(three)), 1)
+    index = {id: row for row, id in enumerate(values["id"])}
+    return brief, replace(
+        catalogue, cameras=replace(cameras, values=values, lines=range(2, 2 + len(three)), index=index)
+    )
+
+
+def test_search_agrees_where_cameras_share_their_optics():
+    for seed in range(40):
+        problem = Problem(*crowded(seed))
+        rigs = judged_every_pair(problem)
+        for order in ("value", "price", "sampling", "length"):
+            assert_agrees(problem, rigs, order, 9)
+
+
+def test_concessions_are_the_least_of_those_of_each_camera_alone():
+    compared = 0
+    for seed in range(60):
+        brief, catalogue = crowded(seed)
+        given = concede(brief, catalogue)
+        if not given:
+            continue
+        alone = [
+            concede(brief, replace(catalogue, cameras=only(catalogue.cameras, row)))
+            for row in range(len(catalogue.cameras))
+        ]
+        for one in given:
+            others = [other for each in alone for other in each if other.demand == one.demand]
+            sure = [other for other in others if not unknown_but(brief, catalogue, other)] or others
+            least = min(abs(np.log(other.needed / other.asked)) for other in sure)
+            assert abs(np.log(one.needed / one.asked)) == pytest.approx(least, rel=1e-9), (seed, one)
+            compared += 1
+    assert compared > 20
+
+
+def only(table, row):
+    values = {column: cells[row : row + 1] for column, cells in table.values.items()}
+    return replace(table, values=values, lines=table.lines[row : row + 1], index={values["id"][0]: 0})
+
+
+def unknown_but(brief, catalogue, given):
+    """Whether the pair of a concession has something unknown beside what it concedes."""
+    rig = judge_one(brief, catalogue, given.camera, given.lens)
+    return bool(set(rig.unknown) - {given.demand})

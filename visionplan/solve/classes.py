@@ -56,7 +56,7 @@ class Classes:
             values = camera[symbol].copy()
             values[self.first] = sign * np.fmin.reduceat(sign * values[self.members], self.begin[:-1])
             camera[symbol] = values
-        for shared in ("lens", "flange", "flange_unknown", "mount", "thread", "joinable"):
+        for shared in ("lens", "flange", "flange_unknown", "mount", "thread", "joinable", "mount_allowed"):
             getattr(problem, shared)  # worked out once for both
         other = Problem(problem.brief, problem.catalogue, problem.stop, problem.stack)
         other.__dict__.update(problem.__dict__ | {"camera": camera})

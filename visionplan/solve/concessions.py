@@ -106,10 +106,13 @@ def _best_offer(problem: Problem, asked: Demand | Gate) -> _Offer | None:
 
 
 def _hopes(items: Items, rigs: Rigs, asked: Demand | Gate) -> tuple[np.ndarray, ...]:
-    """Camera, lens, least change and whether anything is unknown, of each rig of a block."""
-    change = np.minimum.reduce([change.min(axis=1) for _, change in _changes(rigs, asked)])
+    """Camera, lens, least change and whether anything is unknown, of each rig of a block.
+
+    A stand-in that needs no change at all leaves all hope for its class: no camera of it may be so good.
+    """
+    changes = [np.where(rigs.fits & ~looser, 0.0, change) for _, looser, change in _changes(rigs, asked)]
     unknown = rigs.unknown | items.lens_unknown[rigs.lenses] | items.camera_unknown[rigs.cameras]
-    return rigs.cameras, rigs.lenses, change, unknown
+    return rigs.cameras, rigs.lenses, np.minimum.reduce(changes).min(axis=1), unknown
 
 
 def _offers(judge: Judge, asked: Demand | Gate, cameras: np.ndarray, lenses: np.ndarray) -> Iterator[_Offer]:
@@ -118,7 +121,7 @@ def _offers(judge: Judge, asked: Demand | Gate, cameras: np.ndarray, lenses: np.
     for arrangement in problem.ask.arrangements:
         here = problem.camera["line"][cameras] == arrangement.line
         rigs = judge.rigs(arrangement, cameras[here], lenses[here])
-        for give, change in _changes(rigs, asked):
+        for give, _, change in _changes(rigs, asked):
             least = change.min(initial=np.inf)
             for row, stop in np.argwhere((change <= least * (1 + span.TIE)) & np.isfinite(change)):
                 yield _Offer(
@@ -131,13 +134,16 @@ def _offers(judge: Judge, asked: Demand | Gate, cameras: np.ndarray, lenses: np.
                 )
 
 
-def _changes(rigs: Rigs, asked: Demand | Gate) -> Iterator[tuple[Give, np.ndarray]]:
-    """What must give way, and by how much, of each rig and stop that fits but for that; infinite for the others."""
+def _changes(rigs: Rigs, asked: Demand | Gate) -> Iterator[tuple[Give, np.ndarray, np.ndarray]]:
+    """What must give way, whether it asks for less then, and by how much, of each rig and stop that fits but for that;
+    infinite for the others."""
     for give in _gives(rigs, asked):
         with np.errstate(invalid="ignore", divide="ignore"):
-            looser = rigs.fits & (give.loosens * (give.needed - give.asked) > 0) & _sharp(rigs, give.at)
-            change = np.where(looser, np.abs(np.log(give.needed / give.asked)), np.inf)
-        yield give, np.where(np.isfinite(change), change, np.inf)
+            looser = give.loosens * (give.needed - give.asked) > 0
+            change = np.where(
+                rigs.fits & looser & _sharp(rigs, give.at), np.abs(np.log(give.needed / give.asked)), np.inf
+            )
+        yield give, looser, np.where(np.isfinite(change), change, np.inf)
 
 
 def _gives(rigs: Rigs, asked: Demand | Gate) -> list[Give]:

@@ -25,7 +25,7 @@ def split(heading: str) -> tuple[str, str]:
     """Part a heading into words in plain letters, and its unit where it is one that is known.
 
     >>> split("Brennweite (mm)"), split("Größe, in µm")
-    (('brennweite', 'mm'), ('große', 'µm'))
+    (('brennweite', 'mm'), ('grosse', 'µm'))
     """
     for pattern in _UNIT_PLACES:
         for match in pattern.finditer(heading[:_LONGEST]):

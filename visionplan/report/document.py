@@ -21,18 +21,18 @@ from visionplan.text import figure, markdown
 
 WIDTH = 80
 """Terminal cells of the drawings."""
+_BOLD = "Bold: the best of a row."
 
 
 def shortlist_document(ranking: Ranking, entries: Sequence[Entry], date: str, system: str = "mm") -> str:
     """The document; `date` is told as it is given."""
-    title = markdown(ranking.brief.title or "Shortlist")
     blocks = [
-        f"# {title}: shortlist",
+        _title(ranking),
         *_head(ranking, date),
         "## Brief",
         _table(("line", "value", "what it is"), _brief(ranking)),
         "## Comparison",
-        "Bold: the best of a row.",
+        _BOLD,
         _comparison(entries, system),
     ]
     for number, entry in enumerate(entries, 1):
@@ -44,6 +44,18 @@ def shortlist_document(ranking: Ranking, entries: Sequence[Entry], date: str, sy
         _points(_sources(ranking)),
     ]
     return "\n\n".join(filter(None, blocks)) + "\n"
+
+
+def comparison_document(ranking: Ranking, entries: Sequence[Entry], system: str = "mm") -> str:
+    """The comparison table alone, the notes in its last row."""
+    table = _comparison(entries, system)
+    if any(entry.note for entry in entries):
+        table += f"\n| note | {' | '.join(markdown(entry.note) for entry in entries)} |"
+    return "\n\n".join([_title(ranking), _BOLD, table]) + "\n"
+
+
+def _title(ranking: Ranking) -> str:
+    return f"# {markdown(ranking.brief.title or 'Shortlist')}: shortlist"
 
 
 def _head(ranking: Ranking, date: str) -> Iterator[str]:

@@ -1,4 +1,4 @@
-"""The shortlist as Markdown, CSV and JSON: the rigs that a person marked, side by side, each with its note."""
+"""The shortlist compared, as CSV and as JSON: the rigs that a person marked, side by side, each with its note."""
 
 import csv
 import io
@@ -7,16 +7,11 @@ from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
 from visionplan.report.csv import ranking_csv
-from visionplan.report.elevation import elevation
 from visionplan.report.figures import FIGURES, best
 from visionplan.report.json import ranking_json
-from visionplan.report.spanchart import span_chart
-from visionplan.report.words import limits, misses
+from visionplan.report.words import misses
 from visionplan.solve.rig import Ranking, Rig
-from visionplan.text import csv_cell, markdown
-
-_WIDTH = 80
-"""Terminal cells of a drawing."""
+from visionplan.text import csv_cell
 
 
 @dataclass(frozen=True)
@@ -42,31 +37,6 @@ def compared(entries: Sequence[Entry], system: str = "mm") -> list[tuple[str, li
     if set(missed) != {"nothing"}:
         rows.insert(1, ("misses", missed, frozenset()))
     return rows
-
-
-def shortlist_markdown(ranking: Ranking, entries: Sequence[Entry], system: str = "mm") -> str:
-    """A table with a column a rig, the best figures bold; then each rig's limits, span chart and elevation."""
-    names = [f"{entry.rig.camera} with {entry.rig.lens}" for entry in entries]
-    rows = [["", *(markdown(name) for name in names)], ["---"] * (len(names) + 1)]
-    for name, texts, top in compared(entries, system):
-        cells = [f"**{markdown(text)}**" if place in top else markdown(text) for place, text in enumerate(texts)]
-        rows.append([markdown(name), *cells])
-    if any(entry.note for entry in entries):
-        rows.append(["note", *(markdown(entry.note) for entry in entries)])
-    title = markdown(ranking.brief.title or "Shortlist")
-    blocks = [f"# {title}: shortlist", "Bold: the best of a row.", "\n".join(f"| {' | '.join(row)} |" for row in rows)]
-    for name, entry in zip(names, entries):
-        blocks += [f"## {markdown(name)}", *_told(entry, system)]
-    return "\n\n".join(blocks) + "\n"
-
-
-def _told(entry: Entry, system: str) -> list[str]:
-    rig = entry.rig
-    sentences = [f"Note: {entry.note}" if entry.note else "", "Set otherwise than planned." if entry.moved else ""]
-    sentences += [f"{limits(rig)}." if limits(rig) else "", *rig.assumptions]
-    told = "\n".join(f"- {markdown(sentence)}" for sentence in sentences if sentence)
-    drawings = ["\n".join(span_chart(rig, _WIDTH, system=system)), "\n".join(elevation(rig, _WIDTH, 12, system=system))]
-    return [*([told] if told else []), *(f"```text\n{drawing}\n```" for drawing in drawings)]
 
 
 def _listed(ranking: Ranking, entries: Sequence[Entry]) -> Ranking:

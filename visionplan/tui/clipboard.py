@@ -28,8 +28,8 @@ def sequence(text: str, environment: Mapping[str, str]) -> str | None:
     return plain
 
 
-def advice(environment: Mapping[str, str]) -> str:
+def advice(environment: Mapping[str, str], instead: str = "export to a file instead (x)") -> str:
     """What to do where nothing arrives."""
     if environment.get("TMUX"):
         return "If pasting gives nothing: tmux set -g set-clipboard on"
-    return "If pasting gives nothing, the terminal refuses it: export to a file instead (x)"
+    return f"If pasting gives nothing, the terminal refuses it: {instead}"

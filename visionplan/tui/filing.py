@@ -3,6 +3,7 @@
 import os
 from collections.abc import Callable
 from concurrent.futures import Future
+from datetime import date
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
@@ -15,13 +16,13 @@ from visionplan.demo import demo_folder
 from visionplan.faults import Fault, InputError
 from visionplan.text import clean
 from visionplan.tui.beside import beside
-from visionplan.tui.clipboard import MOST, advice, sequence
+from visionplan.tui.clipboard import advice, sequence
 from visionplan.tui.faults_page import FaultsPage
 from visionplan.tui.pages import PathPage, PickPage
 from visionplan.tui.paths import free_name
 
 FORMATS = {
-    "markdown": (".md", "Markdown: a table, then chart and drawing of each rig"),
+    "markdown": (".md", "Markdown: comparison, sheets, bills of materials"),
     "csv": (".csv", "CSV: a row a rig, for a spreadsheet"),
     "json": (".json", "JSON: every number, for a script"),
 }
@@ -223,14 +224,17 @@ class Filing:
             marked = self.state.work.marks
             self.tell("The shortlist is still being judged." if marked else "Nothing is on the shortlist.", "warn")
             return None
-        from visionplan.report.shortlist import shortlist_csv, shortlist_json, shortlist_markdown
+        from visionplan.report.document import comparison_document, shortlist_document
+        from visionplan.report.shortlist import shortlist_csv, shortlist_json
 
         system = self.state.brief.units
         if form == "csv":
             return shortlist_csv(ranking, entries, system)
         if form == "json":
             return shortlist_json(ranking, entries)
-        return shortlist_markdown(ranking, entries, system)
+        if form == "table":
+            return comparison_document(ranking, entries, system)
+        return shortlist_document(ranking, entries, date.today().isoformat(), system)
 
     def export(self) -> None:
         """Ask for a format and a name, then write the shortlist."""
@@ -261,13 +265,29 @@ class Filing:
         self.redraw()
 
     def copy(self, form: str) -> None:
-        """Send the shortlist to the clipboard of the terminal."""
+        """Send the shortlist to the clipboard of the terminal; where it is too long for that, offer what isn't."""
         text = self.shortlist_text(form)
-        if text is None:
+        if text is None or self.send(text, form):
             return
+        options = [("Comparison", "the table alone", "table"), ("Export", "all of it, to a file", "export")]
+        intro = f"The shortlist as {form} has {len(text):,} characters, more than terminals take into their clipboard."
+
+        def chosen(choice: str | None) -> None:
+            if choice == "export":
+                self.export()
+            elif choice:
+                short = self.shortlist_text(choice)
+                if short is not None and not self.send(short, choice):
+                    self.tell("The table is too long for the clipboard too: export it (x in view 4).", "warn")
+            self.redraw()
+
+        self.show(PickPage("Too long to copy", options, intro=intro, narrow=False), chosen)
+
+    def send(self, text: str, form: str, *instead: str) -> bool:
+        """Send a text to the clipboard of the terminal; whether it isn't too long for that."""
         sent = sequence(text, os.environ)
         if sent is None:
-            self.tell(f"The shortlist is longer than terminals take ({MOST:,} characters): export it (x).", "warn")
-            return
+            return False
         self.write_raw(sent)  # type: ignore[attr-defined]
-        self.tell(f"{len(text):,} characters of {form} sent to the clipboard. {advice(os.environ)}.")
+        self.tell(f"{len(text):,} characters of {form} sent to the clipboard. {advice(os.environ, *instead)}.")
+        return True

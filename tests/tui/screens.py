@@ -12,12 +12,19 @@ from tests.tui.desk import sit_down
 
 HERE = Path(__file__).parent
 WORKS = HERE / "works"
+TARGET = (
+    *("enter", *"50", "space", *"mm", "enter", *"725", "enter", "down", "down"),
+    *("enter", *"325", "space", *"mm", "enter", "down", "enter", *"3", "space", *"mm", "enter"),
+)
+"""A target in the focus plane measured and the distance taped, the rig 8 mm too far."""
 SCREENS = {
     "brief": ((80, 24), ("1",)),
     "rigs": ((80, 24), ("down", "space")),
     "rig": ((80, 24), ("enter",)),
     "shortlist": ((80, 24), ("space", "down", "space", "4")),
     "together": ((140, 45), ()),
+    "as_built": ((80, 24), ("space", "5", *TARGET)),
+    "as_built_wide": ((140, 45), ("space", "5", *TARGET)),
 }
 """Name → size and keys."""
 

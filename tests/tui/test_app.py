@@ -30,7 +30,7 @@ async def test_first_screen_shows_the_ranking():
             assert rig.lens in row
 
 
-@pytest.mark.parametrize("number", [1, 2, 3, 4])
+@pytest.mark.parametrize("number", [1, 2, 3, 4, 5])
 async def test_every_key_at_the_foot_does_something(number):
     """No key that is shown is dead: each changes the screen or says something."""
     async with sit_down(JAR) as desk:
@@ -332,6 +332,28 @@ async def test_copy_sends_markdown_to_the_terminal(monkeypatch):
         text = base64.b64decode(coded).decode()
         assert text.startswith("# Jar lids on the capping belt: shortlist")
         assert desk.state.work.marks[0].lens in text
+        assert "Bill of materials" in text
+
+
+async def test_shortlist_too_long_to_copy_offers_its_table(monkeypatch):
+    import base64
+
+    sent = []
+    async with sit_down(JAR) as desk:
+        monkeypatch.setattr(desk.app, "write_raw", sent.append)
+        await desk.press(*["space", "down"] * 9, "4", "n", "x", "y", "enter", "y")
+        assert desk.says("Too long to copy")
+        assert desk.says("more than terminals take")
+        assert not sent
+        await desk.press("c")
+        assert desk.says("characters of table sent to the clipboard")
+        text = base64.b64decode(re.search(";c;([A-Za-z0-9+/=]+)", sent[0])[1]).decode()
+        for mark in desk.state.work.marks:
+            assert mark.lens in text
+        assert "| note | xy |" in text
+        assert "Bill of materials" not in text
+        await desk.press("y", "e")
+        assert desk.says("Export the shortlist as")
 
 
 async def test_save_asks_for_a_name_where_there_is_none(tmp_path, monkeypatch):

@@ -268,3 +268,36 @@ def test_a_rig_is_marked_as_it_stands(state):
     assert state.work.marks == (Mark("a", "b"),)
     state.undo()
     assert state.work.marks[0] == replace(moved, note="as it hangs")
+
+
+def test_measured_values_are_on_disk_at_once_and_undone_apart(state, brief):
+    rig, moved = Mark("c", "l"), Mark("c", "l", at=300.0)
+    state.measure(rig, "target 1 length 50 mm", {"1 length": "50 mm"})
+    state.measure(moved, "taped distance 3 in", {"distance": "3 in"})
+    state.measure(rig, "target 1 spans 812", {"1 length": "50 mm", "1 pixels": "812"})
+    state.journal.close()
+    other = State(state.folder)
+    other.open(str(brief))
+    assert other.measured(rig) == {"1 length": "50 mm", "1 pixels": "812"}
+    assert other.measured(moved) == {"distance": "3 in"}
+    assert other.kept() == (rig, moved)
+    assert other.undo() == "target 1 spans 812 of c"
+    assert other.measured(rig) == {"1 length": "50 mm"}
+    other.measure(moved, "dropped", {})
+    assert other.kept() == (rig,)
+    other.close()
+
+
+def test_journal_from_before_anything_could_be_measured_is_read(state, brief):
+    import json
+
+    state.mark(Mark("c", "l"))
+    state.journal.close()
+    data = json.loads(state.journal.file.read_text())
+    for work in (data["work"], *(step["work"] for step in data["past"])):
+        del work["measured"]
+    state.journal.file.write_text(json.dumps(data))
+    other = State(state.folder)
+    other.open(str(brief))
+    assert other.work.marks == (Mark("c", "l"),)
+    other.close()

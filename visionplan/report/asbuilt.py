@@ -102,7 +102,7 @@ def _causes(built: AsBuilt, system: str) -> Iterator[str]:
     if not built.causes and not square:
         yield "Nothing that the measurement can tell from the plan."
     if not built.certain and len(built.causes) > 1:
-        yield "Any one of these alone would show so; a taped distance (--distance) tells them apart."
+        yield "Any one of these alone would show so; a taped distance tells them apart."
     for cause in built.causes:
         yield _cause(built, cause, system)
     for tilt in square:
@@ -151,11 +151,11 @@ def _steps(built: AsBuilt, system: str) -> Iterator[str]:
 
 def _after(built: AsBuilt, system: str) -> Iterator[Row]:
     rig = built.corrected
-    yield "magnification", figure(rig.magnification)
     if rig.fits:
         yield "judged", f"all that is asked holds: {rig.grade}, {room(rig.latitude)} of room"
     else:
         yield "judged", f"it still misses {'; '.join(misses(rig, system)) or 'its span'}"
+    yield "magnification", figure(rig.magnification)
 
 
 def _granted(built: AsBuilt, system: str) -> Iterator[str]:

@@ -87,7 +87,7 @@ def as_built(planned: Rig, targets: Sequence[Target], distance: float | None = N
         Where a target can't span what is said, or nothing can be said of the rig.
     """
     case = planned.case
-    _check(planned, targets, distance)
+    check(planned, targets, distance)
     sides = {"width": case.w, "height": case.h}
     raised = height - case.z
 
@@ -128,7 +128,8 @@ def as_built(planned: Rig, targets: Sequence[Target], distance: float | None = N
     )
 
 
-def _check(planned: Rig, targets: Sequence[Target], distance: float | None) -> None:
+def check(planned: Rig, targets: Sequence[Target], distance: float | None) -> None:
+    """Raise InputError where `as_built` would."""
     case, faults = planned.case, []
 
     def fault(found: str, expected: str) -> None:

@@ -14,6 +14,7 @@ from textual.events import Event, Key, Paste, Resize
 from visionplan.catalogue.items import Catalogue
 from visionplan.faults import InputError
 from visionplan.solve.rig import Rig
+from visionplan.tui.asbuilt_pane import AsBuiltPane
 from visionplan.tui.brief_pane import BriefPane
 from visionplan.tui.chrome import NEEDED, Foot, Head, Small, key_names
 from visionplan.tui.filing import Filing
@@ -51,6 +52,7 @@ class PlanApp(Filing, Solving, App[None]):
         Binding("2", "view(2)", "Rigs", show=False),
         Binding("3", "view(3)", "Rig", show=False),
         Binding("4", "view(4)", "Shortlist", show=False),
+        Binding("5", "view(5)", "As built", show=False),
         Binding("tab", "turn(1)", "next view", show=False),
         Binding("shift+tab", "turn(-1)", "view before", show=False),
         Binding("u", "undo", "undo"),
@@ -86,7 +88,8 @@ class PlanApp(Filing, Solving, App[None]):
         """What follows the answer of each page that is shown."""
         self.head, self.foot, self.small = Head(), Foot(), Small()
         self.brief_pane, self.rigs, self.rig_pane, self.shortlist = BriefPane(), RigsPane(), RigPane(), ShortlistPane()
-        self.panes: tuple[Pane, ...] = (self.brief_pane, self.rigs, self.rig_pane, self.shortlist)
+        self.as_built = AsBuiltPane()
+        self.panes: tuple[Pane, ...] = (self.brief_pane, self.rigs, self.rig_pane, self.shortlist, self.as_built)
         self.pane: Pane = self.rigs
         """The view in use."""
         for theme in THEMES:
@@ -101,7 +104,11 @@ class PlanApp(Filing, Solving, App[None]):
         yield self.small
         yield self.head
         self.body = Horizontal(
-            self.brief_pane, Vertical(self.rigs, self.rig_pane, id="right"), self.shortlist, id="body"
+            self.brief_pane,
+            Vertical(self.rigs, self.rig_pane, id="right"),
+            self.shortlist,
+            self.as_built,
+            id="body",
         )
         yield self.body
         yield self.foot
@@ -120,9 +127,10 @@ class PlanApp(Filing, Solving, App[None]):
         self.wide = width >= WIDE[0] and height >= WIDE[1]
         for part in (self.head, self.body, self.foot):
             part.display = enough
-        together = self.wide and self.pane is not self.shortlist
+        alone = (self.shortlist, self.as_built)
+        together = self.wide and self.pane not in alone
         for pane in self.panes:
-            _show(pane, pane is self.pane or (together and pane is not self.shortlist))
+            _show(pane, pane is self.pane or (together and pane not in alone))
         _show(self.small, not enough)
         self.query_one("#right").display = self.rigs.display or self.rig_pane.display
         self.screen_stack[0].set_class(together, "wide")
@@ -225,11 +233,19 @@ class PlanApp(Filing, Solving, App[None]):
     def action_view(self, number: int) -> None:
         """Bring a view up."""
         self._leave_typing()
-        self.pane = self.panes[number - 1]
+        before, self.pane = self.pane, self.panes[number - 1]
         if self.pane is self.rig_pane and self.rig_pane.base is None:
             self.follow()
+        if self.pane is self.as_built is not before:
+            self.as_built.choose(self._in_hand(before))
         self.arrange()
         self.redraw()
+
+    def _in_hand(self, pane: Pane) -> Mark | None:
+        """The rig that a view is about, where it is about one."""
+        if pane is self.shortlist:
+            return self.shortlist.mark
+        return self.rig_pane.setting[0] if pane is self.rig_pane else None
 
     def action_turn(self, by: int) -> None:
         """Go on to the next view."""
@@ -245,6 +261,7 @@ class PlanApp(Filing, Solving, App[None]):
     def _leave_typing(self) -> None:
         if self.brief_pane.entry:
             self.brief_pane.leave()
+        self.as_built.leave()
         self.rigs.entry = self.shortlist.entry = None
 
     def look_at(self, rig: Rig | None) -> None:
@@ -360,6 +377,7 @@ class PlanApp(Filing, Solving, App[None]):
             options.append((binding.description, key_names(binding), f"0 {binding.action}"))
         options += [
             ("save under another name", "", "0 save_as"),
+            ("copy the comparison table alone", "", "0 copy_as('table')"),
             ("copy the shortlist as CSV", "", "0 copy_as('csv')"),
             ("copy the shortlist as JSON", "", "0 copy_as('json')"),
         ]

@@ -26,7 +26,7 @@ from visionplan.tui.measuring import (
     wrong,
 )
 from visionplan.tui.pane import Item, Pane
-from visionplan.tui.rows import Row, cell, ends, fit, paragraph
+from visionplan.tui.rows import Row, cell, ends, paragraph
 from visionplan.tui.work import Mark
 from visionplan.units import show
 
@@ -37,6 +37,8 @@ if TYPE_CHECKING:
 _NAMES = 17
 _CELLS = {"length": 12, "pixels": 12, "along": 9, "at": 10, "off": 14}
 _LABEL = 18
+_MORE = {"1": "none yet", "2": "one at the other end, or along the other side, tells the tilt"}
+"""What stands in the row of a target that isn't measured."""
 
 
 class AsBuiltPane(Pane):
@@ -67,7 +69,6 @@ class AsBuiltPane(Pane):
         """What is wrong with what is being typed."""
         self.built: AsBuilt | str | None = None
         """What came out, or why nothing can; None while nothing did."""
-        self._built_of: tuple[Mark, Measures] | None = None
         self._asked: tuple[Rig, Measures] | None = None
         self._from = 0
         """The first row in view of what came out."""
@@ -80,7 +81,7 @@ class AsBuiltPane(Pane):
     def marks(self) -> list[Mark]:
         """The rigs that can be looked at: those of the shortlist, those measured, and the one that view 3 shows."""
         looked, _ = self.app.rig_pane.setting
-        return list(dict.fromkeys([*self.state.settings_kept(), *([looked] if looked else [])]))
+        return list(dict.fromkeys([*self.state.kept(), *([looked] if looked else [])]))
 
     def choose(self, mark: Mark | None) -> None:
         """Go to a rig; None stays with the one that was chosen, as long as it is there."""
@@ -89,7 +90,7 @@ class AsBuiltPane(Pane):
             mark = self.mark if self.mark in marks else marks[0] if marks else None
         if mark != self.mark:
             self.mark, self.cursor, self.column, self._from = mark, "1", "length", 0
-            self.built = self._built_of = self._asked = None
+            self.built = self._asked = None
 
     @property
     def planned(self) -> Rig | str | None:
@@ -114,7 +115,7 @@ class AsBuiltPane(Pane):
     def _ask(self) -> None:
         read, planned = measures(self.values), self.planned
         if not read.targets:
-            self.built = self._built_of = self._asked = None
+            self.built = self._asked = None
         elif isinstance(planned, str):
             self.built = planned
         elif planned and not (self._asked and self._asked[0] is planned and self._asked[1] == read):
@@ -124,7 +125,7 @@ class AsBuiltPane(Pane):
     def diagnosed(self, planned: Rig | None, read: Measures | None, built: "AsBuilt | str | None") -> None:
         """Take what came out."""
         if self._asked and self._asked[0] is planned and self._asked[1] == read and self.mark:
-            self.built, self._built_of = built, (self.mark, self._asked[1])
+            self.built = built
 
     # what stands on the screen
 
@@ -164,7 +165,7 @@ class AsBuiltPane(Pane):
         for row in [*(str(number) for number in range(1, shown + 1)), *SINGLE]:
             items.append((self._row(row, values, width), row))
             if self.entry and row == self.cursor:
-                items.append((self._under(values, width), None))
+                items += [(under, None) for under in self._under(values, width)]
         return items
 
     def _row(self, row: str, values: Values, width: int) -> Row:
@@ -174,7 +175,7 @@ class AsBuiltPane(Pane):
         if row in SINGLE:
             return [*drawn, *self._cell(row, values, 24, here)]
         if not here and row not in map(str, numbers(values)):
-            return [*drawn, ("none yet" if row == "1" else "no further one", "dim")]
+            return [*drawn, (_MORE.get(row, "another one"), "dim")]
         for column in COLUMNS:
             drawn += self._cell(f"{row} {column}", values, _CELLS[column], here and column == self.column)
         return drawn
@@ -191,14 +192,14 @@ class AsBuiltPane(Pane):
         role = "dim" if none or not text else "strong"
         return [cell(shown, cells - 1, f"{role} cursor" if here else role), (" ", "")]
 
-    def _under(self, values: Values, width: int) -> Row:
+    def _under(self, values: Values, width: int) -> list[Row]:
         """What stands under a value that is being typed."""
         if self.fault:
             expected = f"; expected {self.fault.expected}" if self.fault.expected else ""
-            return fit([("    ", ""), (f"× {self.fault.found}{expected}", "warn")], width)
+            return paragraph(f"× {self.fault.found}{expected}", width - 1, "warn", "    ")
         before = clean(values.get(self.key, "")) or "not measured"
         choices = f"   ↑↓ {', '.join(self.field.choices)}" if self.field.choices else ""
-        return fit([("    ", ""), (f"was {before}   Enter keeps, Esc drops{choices}", "dim")], width)
+        return [[(f"    was {before}   Enter keeps, Esc drops{choices}", "dim")]]
 
     def below(self, width: int, height: int) -> list[Row]:
         """What the values tell, as much as there is room for."""
@@ -230,8 +231,10 @@ class AsBuiltPane(Pane):
         from visionplan.report.spanchart import span_rows
 
         system = self.state.brief.units
+        # what was measured stands above; what to do comes before why, so that it is in view
+        _, stands, off, right, after, granted = sections(self.built, system)
         rows: list[Row] = []
-        for section in [*sections(self.built, system)][1:]:  # the first is what was measured, which stands above
+        for section in filter(None, (stands, right, after, off, granted)):
             rows += _section(section, width)
         self._chart = len(rows) + 1
         return [
@@ -272,6 +275,13 @@ class AsBuiltPane(Pane):
         columns = list(COLUMNS)
         self.column = columns[max(0, min(columns.index(self.column) + by, len(columns) - 1))]
         self.app.redraw()
+
+    def action_move(self, by: int) -> None:
+        """Go to another target or value; to a target that isn't there yet, at its length."""
+        super().action_move(by)
+        if self.cursor not in SINGLE and int(str(self.cursor or 1)) not in numbers(self.values):
+            self.column = "length"
+            self.app.redraw()
 
     def action_page(self, by: int) -> None:
         """Read on in what came out."""
@@ -362,12 +372,12 @@ class AsBuiltPane(Pane):
         values, key, typed = self.values, self.key, self.entry.text.strip()
         self.leave()
         fresh = {other: text for other, text in values.items() if other != key}
-        self._keep(fresh | {key: typed} if typed else fresh, f"{self._name()} {typed or 'not measured'}")
+        self._keep(fresh | {key: typed} if typed else fresh, f"{self._named()} {typed or 'not measured'}")
         if typed and self.column == "length" and self.cursor not in SINGLE and f"{self.cursor} pixels" not in values:
             self.column = "pixels"
             self.action_edit()
 
-    def _name(self) -> str:
+    def _named(self) -> str:
         return self.field.name if self.cursor in SINGLE else f"target {self.cursor} {self.field.name}"
 
     def _keep(self, values: dict[str, str], label: str) -> None:
@@ -381,7 +391,7 @@ class AsBuiltPane(Pane):
             return
         values = self.values
         whole = self.cursor not in SINGLE and self.column in ("length", "pixels")
-        name = f"target {self.cursor}" if whole else self._name()
+        name = f"target {self.cursor}" if whole else self._named()
         if self.key not in values and not (whole and int(str(self.cursor)) in numbers(values)):
             self.app.tell(f"{name.capitalize()} is not measured.")
             return
@@ -396,22 +406,15 @@ class AsBuiltPane(Pane):
             return
         from visionplan.report.asbuilt import asbuilt_text
 
-        self.app.send(asbuilt_text(self.built, self.state.brief.units), "text")
+        text = asbuilt_text(self.built, self.state.brief.units)
+        self.app.send(text, "text", "the asbuilt command prints the same")
 
 
 def _section(section: "Section", width: int) -> list[Row]:
-    """Its title in the column of the labels where that is free, else in a row of its own."""
-    rows: list[Row] = []
-    texts = [("", text) for text in section.points]
-    texts += [("", f"{number}. {text}") for number, text in enumerate(section.steps, 1)]
-    if section.rows:
-        rows.append([(f" {section.title}", "head")])
-    for place, (label, text) in enumerate([*section.rows, *texts]):
-        name, role = (label, "dim") if label else ("" if place else section.title, "head")
-        first, *rest = wrap(clean(text), width - _LABEL - 2)
-        rows.append([(f" {pad(name, _LABEL)}", role), (first, "missed" if text.startswith(_BAD) else "")])
-        rows += [[(" " * (_LABEL + 1) + line, "")] for line in rest]
-    return rows
-
-
-_BAD = ("misses ", "it still misses ")
+    """Its title in the column of the labels, once; labels of its own before their texts."""
+    texts = [f"{label}: {text}" for label, text in section.rows]
+    texts += [f"{number}. {text}" for number, text in enumerate(section.steps, 1)]
+    texts += section.points
+    lines = [line for text in texts for line in wrap(clean(text), width - _LABEL - 2, "  " * bool(section.rows))]
+    titles = [section.title, *[""] * (len(lines) - 1)]
+    return [[(f" {pad(title, _LABEL)}", "head"), (line, "")] for title, line in zip(titles, lines)]

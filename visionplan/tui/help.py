@@ -28,8 +28,16 @@ TEXTS = {
     ),
     "Shortlist": (
         "The marked rigs side by side; the best of a row has a star, what is alike in all stands dimmed.",
-        "y copies the comparison as Markdown into the clipboard of the terminal you sit at, also over SSH (OSC 52); "
-        "where a terminal refuses that, x exports it to a file.",
+        "y copies the shortlist as Markdown into the clipboard of the terminal you sit at, also over SSH (OSC 52); "
+        "where a terminal refuses that, or it is too long, x exports it to a file.",
+    ),
+    "As built": (
+        "A target of known length in the picture, in focus, and how many pixels it spans from end to end: that tells "
+        "where the rig stands, what is off, and what to move by how much. It is about the rig that view 3 or 4 was "
+        "at; n and b go to the others.",
+        "A second target tells the tilt: one at each end of a side, laid alike, or one along each side. A taped "
+        "distance tells a wrong distance from a wrong lens. Empty values count as what stands there dimmed.",
+        "What was measured is kept with the work, a rig at a time.",
     ),
 }
 PARAGRAPHS = (

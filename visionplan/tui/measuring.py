@@ -2,12 +2,15 @@
 
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
 from visionplan.faults import Fault, InputError
 from visionplan.solve.rig import Rig
-from visionplan.solve.target import ENDS, Target
 from visionplan.text import quoted
 from visionplan.units import UnitError, parse
+
+if TYPE_CHECKING:
+    from visionplan.solve.target import Target
 
 MOST_TARGETS = 4
 """One at each end of both sides of the field."""
@@ -45,8 +48,8 @@ COLUMNS = {
     "at": Field(
         "where",
         "Where in the picture it lies; one at each end of a side, or one along each side, tells the tilt",
-        f"centre, {', '.join(ENDS)}",
-        choices=("centre", *ENDS),
+        "centre, left, right, bottom or top",
+        choices=("centre", "left", "right", "bottom", "top"),
         default="centre",
     ),
     "off": Field(
@@ -83,7 +86,7 @@ Values = Mapping[str, str]
 class Measures:
     """What was measured, as numbers."""
 
-    targets: tuple[Target, ...]
+    targets: "tuple[Target, ...]"
     distance: float | None
     """mm"""
     height: float
@@ -122,8 +125,10 @@ def read_value(key: str, text: str) -> float | str:
     return value
 
 
-def target_of(values: Values, number: int) -> Target | None:
+def target_of(values: Values, number: int) -> "Target | None":
     """A target, once its length and its pixels are there."""
+    from visionplan.solve.target import Target
+
     read = {column: read_value(key, values[key]) for column in COLUMNS if (key := f"{number} {column}") in values}
     if not {"length", "pixels"} <= read.keys():
         return None

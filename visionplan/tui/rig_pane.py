@@ -71,6 +71,15 @@ class RigPane(Pane):
         else:
             self.shown = rig
 
+    @property
+    def setting(self) -> tuple[Mark | None, Rig | None]:
+        """The rig looked at and how it is set, and that rig once it is judged so."""
+        if self.base is None:
+            return None, None
+        if self.mark is None:
+            return Mark(self.base.camera, self.base.lens), self.base
+        return self.mark, self.shown if self.mark == self._shown_as else None
+
     def _sheet(self, width: int) -> list[Row]:
         rig = self.shown
         if rig is None:

@@ -1,5 +1,6 @@
 """The Shortlist: the marked rigs side by side, a column each, with a note to each."""
 
+from dataclasses import replace
 from typing import ClassVar
 
 from textual.binding import Binding, BindingType
@@ -15,6 +16,7 @@ from visionplan.tui.entry import Entry
 from visionplan.tui.pane import Item, Pane
 from visionplan.tui.rigs_table import GRADE_ROLE
 from visionplan.tui.rows import Row, cell, paragraph
+from visionplan.tui.work import Mark
 
 _NAMES = 22
 _LEAST, _MOST = 18, 30
@@ -51,6 +53,12 @@ class ShortlistPane(Pane):
         return [
             Listed(rig, mark.note, not mark.planned) for mark, rig in self.state.shortlist() if isinstance(rig, Rig)
         ]
+
+    @property
+    def mark(self) -> Mark | None:
+        """The rig under the cursor, without its note."""
+        marks = self.state.work.marks
+        return replace(marks[max(0, min(self.place, len(marks) - 1))], note="") if marks else None
 
     def _columns(self, width: int) -> tuple[int, range]:
         """How wide a column is, and which are in view."""

@@ -8,6 +8,7 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field, replace
 from functools import cache
 from threading import Condition, Thread
+from typing import TYPE_CHECKING
 
 from visionplan import units
 from visionplan.brief.model import Brief
@@ -18,9 +19,13 @@ from visionplan.solve import concede, judge_one, rank, tolls
 from visionplan.solve.rig import Concession, Ranking, Rig
 from visionplan.solve.take import Taken, take
 from visionplan.solve.variant import variant
+from visionplan.tui.measuring import Measures
 from visionplan.tui.work import Mark
 
-URGENCY = ("take", "rank", "judge", "concede", "marks", "more", "tolls")
+if TYPE_CHECKING:
+    from visionplan.solve.asbuilt import AsBuilt
+
+URGENCY = ("take", "rank", "judge", "built", "concede", "marks", "more", "tolls")
 """Kinds of requests, the most urgent first; of each kind only the newest waits."""
 
 
@@ -38,7 +43,9 @@ class Request:
     marks: Sequence[Mark] = ()
     """For marks all of the shortlist; for judge the one that is looked at."""
     rig: Rig | None = None
-    """For judge: the rig as planned, to be set otherwise."""
+    """For judge: the rig as planned, to be set otherwise; for built: as it was to be built."""
+    measures: Measures | None = None
+    """For built."""
     text: str = ""
     concession: Concession | None = None
 
@@ -55,6 +62,8 @@ class Answer:
     tolls: dict[str, int] | None = None
     """All lines worked out so far."""
     taken: Taken | None = None
+    built: "AsBuilt | str | None" = None
+    """What the measures tell, or why they can't."""
     fault: str = ""
 
 
@@ -130,6 +139,8 @@ class Solver:
             self._answer(
                 Answer(request, rigs={replace(m, note=""): judged(brief, catalogue, m) for m in request.marks})
             )
+        elif request.kind == "built":
+            self._answer(Answer(request, built=diagnosed(request.rig, request.measures)))
         elif request.kind == "take":
             assert request.concession
             taken = take(request.text, brief.source, catalogue, request.concession)
@@ -174,3 +185,16 @@ def _warm() -> None:
     import tomlkit  # noqa: F401
 
     units.parse("1 furlong", "mm")
+
+
+def diagnosed(planned: Rig | None, measured: Measures | None) -> "AsBuilt | str":
+    """What the measures tell of a rig, or why they can't."""
+    from visionplan.solve.asbuilt import as_built
+
+    assert planned
+    assert measured
+    try:
+        return as_built(planned, measured.targets, measured.distance, measured.height)
+    except InputError as error:
+        fault = error.faults[0]
+        return f"{fault.found}; expected {fault.expected}" if fault.expected else fault.found

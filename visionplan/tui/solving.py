@@ -1,6 +1,5 @@
 """The app's side of the solver: what is asked when, and what is done with the answers."""
 
-from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
 from textual.message import Message
@@ -115,6 +114,8 @@ class Solving:
         elif request.kind == "judge":
             for mark, rig in answer.rigs.items():
                 self.rig_pane.judged(mark, rig)  # type: ignore[attr-defined]
+        elif request.kind == "built":
+            self.as_built.diagnosed(request.rig, request.measures, answer.built)  # type: ignore[attr-defined]
         elif request.kind == "take":
             self._take_concession(answer)
         self.redraw()  # type: ignore[attr-defined]
@@ -137,10 +138,9 @@ class Solving:
             self.ask("tolls")
 
     def marks_changed(self) -> None:
-        """Have the shortlist judged, what of it isn't yet."""
+        """Have the shortlist and what was measured judged, what of it isn't yet."""
         state = self.state  # type: ignore[attr-defined]
-        marks = [replace(mark, note="") for mark in state.work.marks]
-        if unknown := [mark for mark in marks if mark not in state.results.rigs]:
+        if unknown := [mark for mark in state.kept() if mark not in state.results.rigs]:
             self.ask("marks", marks=tuple(unknown))
         self.redraw()  # type: ignore[attr-defined]
 

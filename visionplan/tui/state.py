@@ -1,5 +1,6 @@
 """The state of the interface: the work, its history, its journal and what was found out about it. Knows no Textual."""
 
+from collections.abc import Mapping
 from dataclasses import dataclass, field, replace
 from pathlib import Path
 
@@ -15,7 +16,7 @@ from visionplan.faults import Fault, InputError
 from visionplan.solve.rig import Concession, Ranking, Rig
 from visionplan.solve.take import Taken
 from visionplan.tui.journal import Journal, key_of, newest, prune, state_folder
-from visionplan.tui.work import MOST_STEPS, Mark, Step, Work, pack, unpack
+from visionplan.tui.work import MOST_STEPS, Mark, Measurement, Step, Work, pack, unpack
 
 
 class ReadOnly(Exception):
@@ -316,6 +317,19 @@ class State:
         marks[place] = replace(marks[place], note=note)
         self.change(f"note to {marks[place].camera}", replace(self.work, marks=tuple(marks)))
 
+    # as built
+
+    def measured(self, mark: Mark) -> dict[str, str]:
+        """What was measured of a rig, as typed, by key."""
+        return next((dict(one.values) for one in self.work.measured if one.mark == mark), {})
+
+    def measure(self, mark: Mark, label: str, values: Mapping[str, str]) -> None:
+        """Keep what was measured of a rig in the place of what was before; raises as `change`."""
+        measured = {one.mark: one for one in self.work.measured}
+        measured[mark] = Measurement(mark, tuple(values.items()))
+        kept = tuple(one for one in measured.values() if one.values)
+        self.change(f"{label} of {mark.camera}", replace(self.work, measured=kept))
+
     # what is told
 
     @property
@@ -331,11 +345,18 @@ class State:
             return f"Changes are not kept on disk: {self.journal.problem}. They live in this window; save the brief."
         return ""
 
-    def shortlist(self) -> list[tuple[Mark, Rig | str | None]]:
-        """The marked rigs, each judged, or why it can't be, or None while it isn't yet."""
+    def kept(self) -> tuple[Mark, ...]:
+        """The rigs of the shortlist and those measured, each once, without their notes."""
+        marks = [*(replace(mark, note="") for mark in self.work.marks), *(one.mark for one in self.work.measured)]
+        return tuple(dict.fromkeys(marks))
+
+    def judged(self, mark: Mark) -> Rig | str | None:
+        """The rig of a mark without its note, or why it can't be judged, or None while it isn't yet."""
         ranking = self.results.ranking
-        ranked = {(rig.camera, rig.lens): rig for rig in (ranking.rigs if ranking else ())}
-        return [
-            (mark, self.results.rigs.get(replace(mark, note=""), ranked.get(mark.pair) if mark.planned else None))
-            for mark in self.work.marks
-        ]
+        rigs = ranking.rigs if ranking and mark.planned else ()
+        ranked = next((rig for rig in rigs if (rig.camera, rig.lens) == mark.pair), None)
+        return self.results.rigs.get(mark, ranked)
+
+    def shortlist(self) -> list[tuple[Mark, Rig | str | None]]:
+        """The marked rigs, each as `judged`."""
+        return [(mark, self.judged(replace(mark, note=""))) for mark in self.work.marks]

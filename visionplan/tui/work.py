@@ -30,6 +30,16 @@ class Mark:
 
 
 @dataclass(frozen=True)
+class Measurement:
+    """What was measured of a rig as built."""
+
+    mark: Mark
+    """The rig and how it is set, without its note."""
+    values: tuple[tuple[str, str], ...]
+    """What was typed, by key."""
+
+
+@dataclass(frozen=True)
 class Work:
     """Everything that a change may change."""
 
@@ -42,6 +52,7 @@ class Work:
     catalogue: str = ""
     """The catalogue's folder; "" for the demo works."""
     marks: tuple[Mark, ...] = ()
+    measured: tuple[Measurement, ...] = ()
 
     @property
     def changed(self) -> bool:
@@ -89,11 +100,14 @@ def unpack(data: Mapping[str, Any]) -> tuple[Work, tuple[Step, ...], tuple[Step,
     texts = data["texts"]
 
     def work(packed: Mapping[str, Any]) -> Work:
-        known = {field.name: packed[field.name] for field in fields(Work)}
+        known = {field.name: packed[field.name] for field in fields(Work) if field.name != "measured"}
+        measured = tuple(map(_measurement, packed.get("measured", ())))
         text, saved = (texts[packed[name]] for name in ("text", "saved"))
         if not all(isinstance(value, str) for value in (text, saved, known["path"], known["catalogue"])):
             raise ValueError("no text")
-        return Work(**known | {"text": text, "saved": saved, "marks": tuple(map(_mark, known["marks"]))})
+        return Work(
+            **known | {"text": text, "saved": saved, "marks": tuple(map(_mark, known["marks"])), "measured": measured}
+        )
 
     def steps(name: str) -> tuple[Step, ...]:
         return tuple(Step(str(step["label"]), work(step["work"])) for step in data[name])
@@ -105,3 +119,10 @@ def _mark(packed: Mapping[str, Any]) -> Mark:
     known = {field.name: packed[field.name] for field in fields(Mark)}
     rings = None if known["rings"] is None else tuple(known["rings"])
     return Mark(**known | {"rings": rings})
+
+
+def _measurement(packed: Mapping[str, Any]) -> Measurement:
+    values = tuple((key, text) for key, text in packed["values"])
+    if not all(isinstance(one, str) for pair in values for one in pair):
+        raise ValueError("no text")
+    return Measurement(_mark(packed["mark"]), values)

@@ -5,7 +5,7 @@ NaN stands for a value that the catalogue leaves out and that has no default: wh
 
 from collections.abc import Iterator
 from dataclasses import dataclass
-from functools import cached_property, lru_cache
+from functools import cached_property
 from math import isnan
 
 import numpy as np
@@ -53,41 +53,43 @@ class Problem:
     @cached_property
     def flange(self) -> tuple[np.ndarray, np.ndarray]:
         """Flange distances of cameras and of lenses: stated, else usual for the mount, else NaN."""
-        return _flanges(self.catalogue.cameras), _flanges(self.catalogue.lenses)
+        usual = self._by_mount([FLANGE_DISTANCE.get(name, np.nan) for name in self.mount_names])
+        stated = self.catalogue.cameras["flange distance"], self.catalogue.lenses["flange distance"]
+        return np.where(np.isnan(stated[0]), usual[0], stated[0]), np.where(np.isnan(stated[1]), usual[1], stated[1])
 
-    @cached_property
+    @property
     def flange_unknown(self) -> tuple[np.ndarray, np.ndarray]:
         """Whether the flange distance of a camera, of a lens, is neither stated nor known by its mount."""
-        return _unstated_flange(self.catalogue.cameras), _unstated_flange(self.catalogue.lenses)
+        return np.isnan(self.flange[0]), np.isnan(self.flange[1])
+
+    @cached_property
+    def mount_names(self) -> tuple[str, ...]:
+        """Every mount of a camera or a lens, once."""
+        return tuple(dict.fromkeys(self.catalogue.cameras["mount"] + self.catalogue.lenses["mount"]))
 
     @cached_property
     def mount(self) -> tuple[np.ndarray, np.ndarray]:
-        """Mount of each camera and of each lens as a number."""
-        names = {name: i for i, name in enumerate(dict.fromkeys(self.camera_mounts + self.lens_mounts))}
-        return np.array([names[m] for m in self.camera_mounts], int), np.array(
-            [names[m] for m in self.lens_mounts], int
-        )
+        """Mount of each camera and of each lens, as a place in `mount_names`."""
+        place = {name: i for i, name in enumerate(self.mount_names)}
+        cameras, lenses = self.catalogue.cameras["mount"], self.catalogue.lenses["mount"]
+        return np.array([place[name] for name in cameras], int), np.array([place[name] for name in lenses], int)
+
+    def _by_mount(self, values: list) -> tuple[np.ndarray, np.ndarray]:
+        """Of each camera and of each lens what stands at its mount's place."""
+        of_mount = np.array(values)
+        return of_mount[self.mount[0]], of_mount[self.mount[1]]
 
     @cached_property
     def mount_allowed(self) -> tuple[np.ndarray, np.ndarray]:
         """Whether each camera's and each lens's mount is one that the brief lists."""
-        allowed = self.brief.mounts or ()
-        return (
-            np.array([mount in allowed for mount in self.camera_mounts], bool),
-            np.array([mount in allowed for mount in self.lens_mounts], bool),
-        )
+        return self._by_mount([name in (self.brief.mounts or ()) for name in self.mount_names])
 
     @cached_property
     def thread(self) -> tuple[np.ndarray, np.ndarray, tuple[str, ...]]:
         """Thread of each camera and of each lens as a number, and the threads' names."""
-        threads = {m: thread(m) for m in {*self.camera_mounts, *self.lens_mounts}}
-        names = tuple(sorted(set(threads.values())))
-        number = {m: names.index(t) for m, t in threads.items()}
-        return (
-            np.array([number[m] for m in self.camera_mounts], int),
-            np.array([number[m] for m in self.lens_mounts], int),
-            names,
-        )
+        threads = [thread(name) for name in self.mount_names]
+        names = tuple(sorted(set(threads)))
+        return *self._by_mount([names.index(name) for name in threads]), names
 
     @cached_property
     def id_rank(self) -> tuple[np.ndarray, np.ndarray]:
@@ -98,16 +100,6 @@ class Problem:
     def lens_kinds(self) -> list[str]:
         """Kind of each lens; entocentric where the file leaves it out."""
         return [kind or "entocentric" for kind in self.catalogue.lenses["kind"]]
-
-    @property
-    def camera_mounts(self) -> list[str]:
-        """Mount of each camera, as the file words it."""
-        return self.catalogue.cameras["mount"]
-
-    @property
-    def lens_mounts(self) -> list[str]:
-        """Mount of each lens, as the file words it."""
-        return self.catalogue.lenses["mount"]
 
     @cached_property
     def has_rings(self) -> bool:
@@ -169,21 +161,12 @@ def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
         reach = mod + a - f
         ring = np.where(np.isnan(nearest), np.where(reach > 0, f * f / reach, np.nan), f * nearest)
     ratio = table["pupil ratio"]
-    lists = [
-        listed or _full_stops(low, high)
-        for listed, low, high in zip(
-            table["stops"], table["f-number min"].tolist(), table["f-number max"].tolist(), strict=True
-        )
-    ]
-    stops = np.full((len(lists), max(map(len, lists), default=1)), np.nan)
-    for row, values in enumerate(lists):
-        stops[row, : len(values)] = sorted(values)
     tolerance = table["working distance tolerance"]
     tau = table["transmittance"]
     return {
         "telecentric": telecentric,
         "f": f,
-        "N": stops,
+        "N": _stops(table),
         "p": np.where(telecentric, np.inf, np.where(np.isnan(ratio), 1.0, ratio)),
         "a": np.where(telecentric, 0.0, a),
         "x": np.where(telecentric, 0.0, ring),
@@ -204,9 +187,16 @@ def _lens_symbols(table: Table) -> dict[str, np.ndarray]:
     }
 
 
-@lru_cache(maxsize=4096)
-def _full_stops(low: float, high: float) -> tuple[float, ...]:
-    return stops_between(low, None if isnan(high) else high)
+def _stops(table: Table) -> np.ndarray:
+    """Every lens's stops, the smallest first, NaN after the last: each different list is laid out once."""
+    low, high = table["f-number min"].tolist(), table["f-number max"].tolist()
+    place: dict[tuple, int] = {}
+    number = [place.setdefault(key, len(place)) for key in zip(map(tuple, table["stops"]), low, high)]
+    lists = [sorted(listed) or stops_between(least, None if isnan(most) else most) for listed, least, most in place]
+    stops = np.full((len(lists), max(map(len, lists), default=1)), np.nan)
+    for row, values in enumerate(lists):
+        stops[row, : len(values)] = values
+    return stops[number]
 
 
 def _camera_symbols(table: Table, ask: Ask) -> dict[str, np.ndarray]:
@@ -234,13 +224,3 @@ def _order(ids: list[str]) -> np.ndarray:
     rank = np.empty(len(ids), int)
     rank[sorted(range(len(ids)), key=ids.__getitem__)] = np.arange(len(ids))
     return rank
-
-
-def _unstated_flange(table: Table) -> np.ndarray:
-    by_mount = np.array([mount in FLANGE_DISTANCE for mount in table["mount"]], bool)
-    return np.isnan(table["flange distance"]) & ~by_mount
-
-
-def _flanges(table: Table) -> np.ndarray:
-    usual = np.array([FLANGE_DISTANCE.get(mount, np.nan) for mount in table["mount"]])
-    return np.where(np.isnan(table["flange distance"]), usual, table["flange distance"])

@@ -1,7 +1,7 @@
 """Writing up chosen rigs: every figure and verdict of each, as plain data."""
 
 from collections.abc import Sequence
-from math import isfinite
+from math import isfinite, sqrt
 from typing import Any
 
 import numpy as np
@@ -12,7 +12,6 @@ from visionplan.solve.assumptions import assumptions
 from visionplan.solve.case import Case
 from visionplan.solve.choose import Chosen
 from visionplan.solve.demands import (
-    BY_NAME,
     DEMANDS,
     MET,
     MISSED,
@@ -28,6 +27,9 @@ from visionplan.solve.judge import Judge
 from visionplan.solve.rig import Contrast, Rig, Value, Verdict
 from visionplan.solve.rigs import stop_code
 
+End = tuple[float, str]
+"""A bound of magnification and the demand that sets it."""
+
 
 def rigs_of(judge: Judge, chosen: Chosen) -> tuple[Rig, ...]:
     """Write up rigs, ranked as they stand."""
@@ -38,7 +40,10 @@ def rigs_of(judge: Judge, chosen: Chosen) -> tuple[Rig, ...]:
         shown = _figures(case, m)
         contrast = figures.contrasts(case, m)
     gates = [_gate_columns(gate, judge, case, m) for gate in GATES]
-    return tuple(_rig(chosen, number, one, demands, gates, shown, contrast) for number, one in enumerate(case.rows()))
+    ends = _Ends(demands)
+    return tuple(
+        _rig(chosen, number, one, demands, gates, shown, contrast, ends) for number, one in enumerate(case.rows())
+    )
 
 
 def _case(judge: Judge, chosen: Chosen) -> Case:
@@ -120,16 +125,15 @@ def _gate_columns(gate: Gate, judge: Judge, case: Case, m) -> np.ndarray:
     return stop_code(gate, case, m) if gate.of == "stop" else _flat(judge_gate(gate, case), rigs)
 
 
-def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast) -> Rig:
+def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast, ends: "_Ends") -> Rig:
     fits = bool(chosen.fits[number])
     figure = {name: _known(values[number]) for name, values in shown.items()}
     verdicts = [_verdict(demand, columns, number) for demand, columns in zip(DEMANDS, demands)]
     verdicts += [_gate_verdict(gate, int(codes[number]), one) for gate, codes in zip(GATES, gates)]
     block, row = chosen.blocks[chosen.block[number]], chosen.row[number]
-    bounds = {d.name: (c["lo"][number], c["hi"][number]) for d, c in zip(DEMANDS, demands)}
-    whole = _ends(bounds)
-    never = whole[0][0] == np.inf or whole[1][0] == 0
-    stops = [float(n) for n, ok in zip(block.case.N[row], block.fits[row]) if ok] if fits else []
+    (lo, _), (hi, _) = ends.whole[number]
+    never = lo == np.inf or hi == 0
+    stops = block.case.N[row][block.fits[row]].tolist() if fits else []
     m = figure["magnification"]
     return Rig(
         rank=number + 1,
@@ -144,11 +148,11 @@ def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast
         fits=fits,
         grade=span.GRADES[int(chosen.grade[number])] if fits else None,
         unknown=tuple(v.name for v in verdicts if v.verdict == VERDICTS[UNKNOWN]),
-        span=None if never else (whole[0][0], whole[1][0]),
+        span=None if never else (lo, hi),
         latitude=float(chosen.latitude[number]),
         shortfall=float(chosen.shortfall[number]),
-        pinch=None if never else _pinch(bounds, whole, one),
-        held=_held(bounds, one) if span.holds(whole[0][0], whole[1][0]) else None,
+        pinch=None if never else ends.pinch(number, one.M),
+        held=ends.held(number) if span.holds(lo, hi) and np.isnan(one.M) else None,
         magnification=m,
         working_distance=figure["working_distance"],
         sampling=figure["sampling"],
@@ -220,34 +224,38 @@ def _known(value: Any) -> float | None:
     return float(value) if isfinite(value) else None
 
 
-def _ends(bounds: dict[str, tuple[float, float]], names: Sequence[str] | None = None):
-    """((lo, its demand), (hi, its demand)) of the intersection; of equal ones the first in the table."""
-    chosen = [(name, *bounds[name]) for name in names or bounds]
-    lo, hi = max(entry[1] for entry in chosen), min(entry[2] for entry in chosen)
-    low = next(name for name, low, _ in chosen if low == lo or low >= lo * (1 - span.TIE))
-    high = next(name for name, _, high in chosen if high == hi or high <= hi * (1 + span.TIE))
-    return (lo, low), (hi, high)
+class _Ends:
+    """Of each rig the ends of its demands' intersection, and the demands that set them."""
 
+    def __init__(self, demands: Sequence[dict[str, Any]]):
+        self.whole = self._of(demands, DEMANDS)
+        self.picture = self._of(demands, [demand for demand in DEMANDS if not demand.place])
+        self.place = self._of(demands, [demand for demand in DEMANDS if demand.place])
 
-_PICTURE = tuple(name for name, demand in BY_NAME.items() if not demand.place)
+    @staticmethod
+    def _of(columns: Sequence[dict[str, Any]], some: Sequence[Demand]) -> list[tuple[End, End]]:
+        """((lo, its demand), (hi, its demand)) of each rig; of equal ones the first in the table."""
+        chosen = [column for demand, column in zip(DEMANDS, columns) if demand in some]
+        lows, highs = np.array([c["lo"] for c in chosen]), np.array([c["hi"] for c in chosen])
+        lo, hi = lows.max(axis=0), highs.min(axis=0)
+        low, high = (lows >= lo * (1 - span.TIE)).argmax(axis=0), (highs <= hi * (1 + span.TIE)).argmax(axis=0)
+        named = ([some[i].name for i in places.tolist()] for places in (low, high))
+        return list(zip(*(list(zip(values.tolist(), names)) for values, names in zip((lo, hi), named))))
 
+    def pinch(self, number: int, M: float) -> tuple[str, str]:
+        """The demands that bound the room; where the span is empty, those at its ends."""
+        (lo, _), (hi, _) = self.whole[number]
+        low, high = (self.picture if span.fits(lo, hi, M) else self.whole)[number]
+        return low[1], high[1]
 
-def _pinch(bounds, whole, one: Case) -> tuple[str, str]:
-    empty = not span.fits(whole[0][0], whole[1][0], one.M)
-    low, high = whole if empty else _ends(bounds, _PICTURE)
-    return low[1], high[1]
-
-
-def _held(bounds, one: Case) -> str | None:
-    """The place demand that keeps the working point off the middle of the picture demands."""
-    if not np.isnan(one.M):
-        return None
-    (lo_p, _), (hi_p, _) = _ends(bounds, _PICTURE)
-    (lo, low), (hi, high) = _ends(bounds, [name for name in BY_NAME if name not in _PICTURE])
-    middle = float(np.sqrt(lo_p * hi_p))
-    if not span.holds(lo, middle):
-        return low
-    return high if not span.holds(middle, hi) else None
+    def held(self, number: int) -> str | None:
+        """The place demand that keeps the working point off the middle of the picture demands."""
+        (lo_p, _), (hi_p, _) = self.picture[number]
+        (lo, low), (hi, high) = self.place[number]
+        middle = sqrt(lo_p * hi_p)
+        if not span.holds(lo, middle):
+            return low
+        return high if not span.holds(middle, hi) else None
 
 
 def _flat(values, count: int) -> np.ndarray:

@@ -9,7 +9,7 @@ from markdown_it import MarkdownIt
 
 from tests.solve.traced import BRIEF, CAMERA, LENS, RINGS, catalogue
 from visionplan.brief.forms import value_text
-from visionplan.report.document import shortlist_document
+from visionplan.report.document import comparison_document, shortlist_document
 from visionplan.report.shortlist import Entry
 from visionplan.solve import judge_one, rank
 from visionplan.text import clean
@@ -124,3 +124,13 @@ def test_the_same_work_gives_the_same_lines_and_a_change_only_its_own():
 
 def test_inches():
     assert " in " in document(system="inch")
+
+
+@pytest.mark.parametrize("name", HOSTILE)
+def test_comparison_alone_is_the_documents_table_with_the_notes_under_it(name):
+    ranking, entries = shortlist(name, note=name)
+    (alone,) = tables(comparison_document(ranking, entries))
+    assert alone[:-1] in tables(shortlist_document(ranking, entries, "today"))
+    assert len(alone[-1]) == len(alone[0])
+    plain = tables(comparison_document(ranking, [Entry(entry.rig) for entry in entries]))
+    assert plain == [alone[:-1]]

@@ -60,7 +60,7 @@ async def test_what_is_measured_is_kept_and_found_again():
         assert desk.says("500 px")
         assert desk.says("Where it stands")
         await desk.press("u")
-        assert desk.says("Target 1 lacks spans")
+        assert desk.says("Target 1 lacks how many pixels it spans")
         await desk.press("U")
         assert desk.says("Where it stands")
 
@@ -167,3 +167,12 @@ async def test_without_any_rig_it_says_where_they_come_from():
         assert desk.says("There is no rig yet")
         await desk.press("enter", "delete", "n", "c", "y", "down", "right", "pagedown")
         assert desk.says("There is no rig yet")
+
+
+async def test_ascii_keeps_what_a_value_may_be_off():
+    async with sit_down(JAR, ascii=True) as desk:
+        await desk.press("space", "5")
+        await measure(desk, "50 mm", "500")
+        assert re.search(r"working distance: \d+\.\d+ \+/- \d+\.\d+ mm; planned", desk.text)
+        assert desk.text.isascii()
+        assert desk.says("^v<> value")

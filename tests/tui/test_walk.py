@@ -132,3 +132,24 @@ def test_impossible_brief_to_a_shortlist_in_the_clipboard(terminal, tmp_path):
         time.sleep(0.1)
     assert copied.startswith("# Hair cracks in the rim, as first asked: shortlist")
     assert "span" in copied
+
+
+def test_what_was_measured_outlives_the_line(terminal):
+    terminal.run()
+    terminal.shows("Jar lids on the capping belt", "pairs fit ├")
+    terminal.press("Space", "5")
+    terminal.shows("Lay a ruler")
+    terminal.press("Enter")
+    terminal.type("50 mm")
+    terminal.press("Enter")
+    terminal.type("550")
+    terminal.press("Enter")
+    found = terminal.shows("550 px", "To set it right", "Move the camera")
+    terminal.tmux("kill-session")
+    terminal.ended()
+    terminal.run()
+    terminal.shows("4 Shortlist 1", "pairs fit ├")
+    terminal.press("5")
+    again = terminal.shows("550 px", "To set it right", "Move the camera")
+    move = "Move the camera "
+    assert again.partition(move)[2].split()[:4] == found.partition(move)[2].split()[:4]

@@ -13,9 +13,9 @@ def add(commands) -> None:
     parser = commands.add_parser(
         "open",
         help="shape a brief, read rigs and keep a shortlist in the terminal",
-        description="Open the terminal interface: the brief with its ranking, one rig in full, a shortlist. Without a "
-        "brief it goes on with the work left off last, at first with the demo works; so does visionplan without any "
-        "command. ? lists the keys.",
+        description="Open the terminal interface: the brief with its ranking, one rig in full, a shortlist, what to "
+        "move on a rig that was built. Without a brief it goes on with the work left off last, at first with the demo "
+        "works; so does visionplan without any command. ? lists the keys.",
     )
     parser.add_argument("brief", metavar="BRIEF", nargs="?", help="a TOML file; the work left off last if not said")
     parser.add_argument("--catalogue", metavar="DIR", help="folder with lenses.csv and cameras.csv")

@@ -6,11 +6,11 @@ from textual.binding import Binding, BindingType
 from textual.events import Key
 
 from visionplan.faults import Fault
-from visionplan.report.lines import wrap
 from visionplan.report.remarks import pair
 from visionplan.solve.rig import Rig
-from visionplan.text import clean, figure, pad
+from visionplan.text import clean, figure
 from visionplan.tui.entry import Entry
+from visionplan.tui.findings import findings, nothing_yet
 from visionplan.tui.measuring import (
     COLUMNS,
     MOST_TARGETS,
@@ -21,7 +21,6 @@ from visionplan.tui.measuring import (
     field_of,
     measures,
     numbers,
-    told,
     without_target,
     wrong,
 )
@@ -31,12 +30,10 @@ from visionplan.tui.work import Mark
 from visionplan.units import show
 
 if TYPE_CHECKING:
-    from visionplan.report.page import Section
     from visionplan.solve.asbuilt import AsBuilt
 
 _NAMES = 17
 _CELLS = {"length": 12, "pixels": 12, "along": 9, "at": 10, "off": 14}
-_LABEL = 18
 _MORE = {"1": "none yet", "2": "one at the other end, or along the other side, tells the tilt"}
 """What stands in the row of a target that isn't measured."""
 
@@ -215,33 +212,14 @@ class AsBuiltPane(Pane):
         return [rule, *shown, *([[]] * (room - len(shown)))]
 
     def _told(self, width: int) -> list[Row]:
-        values = self.values
         if isinstance(self.built, str):
-            return [*paragraph(f"Nothing can be told: {clean(self.built)}.", width - 2, "warn", " ")]
+            return paragraph(f"Nothing can be told: {clean(self.built)}.", width - 2, "warn", " ")
         if self.built is None:
-            lacking = [f"target {number} lacks {' and '.join(told(values, number))}" for number in numbers(values)]
-            text = "Lay a ruler or a target of known length into the picture, focus, and type its length and how many "
-            text += "pixels it spans: how the rig stands, what is off and what to move then stands here."
-            if measures(values).targets:
-                text = "working it out …"
-            elif lacking:
-                text = f"{', '.join(lacking).capitalize()}."
-            return paragraph(text, width - 2, "dim", " ")
-        from visionplan.report.asbuilt import sections
-        from visionplan.report.spanchart import span_rows
-
-        system = self.state.brief.units
-        # what was measured stands above; what to do comes before why, so that it is in view
-        _, stands, off, right, after, granted = sections(self.built, system)
-        rows: list[Row] = []
-        for section in filter(None, (stands, right, after, off, granted)):
-            rows += _section(section, width)
-        self._chart = len(rows) + 1
-        return [
-            *rows,
-            [("As it stands, over the magnification", "head")],
-            *span_rows(self.built.found, width - 1, self.app.ascii, system),
-        ]
+            rig = self.planned
+            return nothing_yet(self.values, not isinstance(rig, Rig) or rig.magnification is not None, width)
+        words, chart = findings(self.built, width, self.app.ascii, self.state.brief.units)
+        self._chart = len(words)
+        return [*words, *chart]
 
     def hint(self) -> str:
         """What the value under the cursor is."""
@@ -293,7 +271,7 @@ class AsBuiltPane(Pane):
         if self.built is None or isinstance(self.built, str):
             self.app.tell("The chart stands here once a target is measured.")
             return
-        place = min(self._chart - 1, self._most)
+        place = min(self._chart, self._most)
         self._from = 0 if self._from == place else place
         self.app.redraw()
 
@@ -408,13 +386,3 @@ class AsBuiltPane(Pane):
 
         text = asbuilt_text(self.built, self.state.brief.units)
         self.app.send(text, "text", "the asbuilt command prints the same")
-
-
-def _section(section: "Section", width: int) -> list[Row]:
-    """Its title in the column of the labels, once; labels of its own before their texts."""
-    texts = [f"{label}: {text}" for label, text in section.rows]
-    texts += [f"{number}. {text}" for number, text in enumerate(section.steps, 1)]
-    texts += section.points
-    lines = [line for text in texts for line in wrap(clean(text), width - _LABEL - 2, "  " * bool(section.rows))]
-    titles = [section.title, *[""] * (len(lines) - 1)]
-    return [[(f" {pad(title, _LABEL)}", "head"), (line, "")] for title, line in zip(titles, lines)]

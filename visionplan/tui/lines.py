@@ -11,7 +11,7 @@ from visionplan.report.lines import to_ascii
 from visionplan.tui.looks import style
 from visionplan.tui.rows import Row, fit
 
-_PLAIN = str.maketrans("▸◆━┿┯┷├┤┼─│╪╞╡═◂┊×▪", ">*=+++|||-|#[]=<:x#")
+_PLAIN = str.maketrans("▸◆━┿┯┷├┤┼─│╪╞╡═◂┊×▪↑↓←→", ">*=+++|||-|#[]=<:x#^v<>")
 """Signs of the views in ASCII."""
 
 

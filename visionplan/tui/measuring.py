@@ -167,11 +167,12 @@ def wrong(values: Values, key: str, planned: Rig | None) -> Fault | None:
     return None
 
 
-def told(values: Values, number: int) -> Iterator[str]:
-    """What a target lacks."""
-    for column in ("length", "pixels"):
-        if f"{number} {column}" not in values:
-            yield COLUMNS[column].name
+def lacking(values: Values) -> Iterator[str]:
+    """What targets lack, a sentence each."""
+    words = {"length": "its length", "pixels": "how many pixels it spans"}
+    for number in numbers(values):
+        if missing := [word for column, word in words.items() if f"{number} {column}" not in values]:
+            yield f"Target {number} lacks {' and '.join(missing)}."
 
 
 def without_target(values: Values, number: int) -> dict[str, str]:

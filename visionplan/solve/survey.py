@@ -1,6 +1,8 @@
 """The survey: how many pairs fit, and for each class of cameras with a lens how good a rig may be at best."""
 
+from collections.abc import Iterator
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 
@@ -44,29 +46,50 @@ class Survey:
             ok &= np.where(np.isnan(values), not self.problem.brief.strict, values <= limit[rig])
         return ok
 
+    @cached_property
+    def most(self) -> dict[str, np.ndarray]:
+        """Camera symbol → the most of it that any rig of each pair bears."""
+        if not len(self.number):
+            return {}
+        return {symbol: np.maximum.reduceat(limit, self.begin[:-1]) for symbol, limit in self.limits.items()}
+
     def may(self, pair: np.ndarray, camera: np.ndarray) -> np.ndarray:
         """Whether cameras stay within the most that any rig of their pair (rows of `number`) bears of each."""
         ok = np.ones(len(camera), bool)
-        for symbol, limit in self.limits.items():
-            values, most = self.problem.camera[symbol][camera], np.maximum.reduceat(limit, self.begin[:-1])
+        for symbol, most in self.most.items():
+            values = self.problem.camera[symbol][camera]
             ok &= np.isnan(values) | (values <= most[pair])
         return ok
 
     def count(self) -> int:
         """How many pairs fit."""
-        if not self.limits:
+        if not self.most:
             return int(self.classes.size[self.number].sum())
-        total, step = 0, screen.CHUNK // 8
-        for at in range(0, len(self.number), step):
-            end = min(at + step, len(self.number))
-            pair = np.repeat(np.arange(at, end), np.diff(self.begin[at : end + 1]))
-            position, camera = self.classes.spread(self.number[pair])
-            ok = self.within(self.begin[at] + position, camera)
-            if len(pair) == end - at:
-                total += int(np.count_nonzero(ok))
-            else:  # a camera may fit by several rigs
-                total += len(np.unique(pair[position[ok]] * len(self.classes.number) + camera[ok]))
+        pair = np.repeat(np.arange(len(self.number)), np.diff(self.begin))
+        # where one rig bears as much of everything as any other of its pair, it alone decides
+        bears = np.logical_and.reduce([self.limits[symbol] >= most[pair] for symbol, most in self.most.items()])
+        alone = np.logical_or.reduceat(bears, self.begin[:-1])
+        rigs = np.flatnonzero(bears & alone[pair])
+        rigs = rigs[np.diff(pair[rigs], prepend=-1) != 0]
+        total = sum(int(np.count_nonzero(ok)) for _, _, ok in self._tried(rigs, pair))
+        for number, camera, ok in self._tried(np.flatnonzero(~alone[pair]), pair):
+            total += len(np.unique(number[ok] * len(self.classes.number) + camera[ok]))
         return total
+
+    def _tried(self, rigs: np.ndarray, pair: np.ndarray) -> Iterator[tuple[np.ndarray, np.ndarray, np.ndarray]]:
+        """Pair, camera and whether it stays within what the rig bears, for every camera of some rigs.
+
+        Rigs of one pair come together.
+        """
+        step = screen.CHUNK // 8
+        ends = np.flatnonzero(np.diff(pair[rigs], append=-1) != 0) + 1  # after the last rig of each pair
+        begin = 0
+        while begin < len(rigs):
+            end = int(ends[np.searchsorted(ends, min(begin + step, len(rigs)))])
+            position, camera = self.classes.spread(self.number[pair[rigs[begin:end]]])
+            rig = rigs[begin:end][position]
+            yield pair[rig], camera, self.within(rig, camera)
+            begin = end
 
 
 def classes_for(

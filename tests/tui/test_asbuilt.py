@@ -176,3 +176,13 @@ async def test_ascii_keeps_what_a_value_may_be_off():
         assert re.search(r"working distance: \d+\.\d+ \+/- \d+\.\d+ mm; planned", desk.text)
         assert desk.text.isascii()
         assert desk.says("^v<> value")
+
+
+async def test_rig_that_cannot_be_set_so_is_taken_as_planned():
+    async with sit_down("terminal-pins") as desk:
+        await desk.press("enter", "right")
+        assert desk.says("stands at its own working distance")
+        await desk.press("5")
+        assert desk.app.as_built.mark.planned
+        assert desk.app.as_built.planned.lens == desk.app.rig_pane.base.lens
+        assert not desk.says("judging")

@@ -317,8 +317,7 @@ class AsBuiltPane(Pane):
         elif event.key == "enter":
             self._accept()
         elif event.key in ("up", "down", "tab") and choices:
-            place = choices.index(self.entry.text) if self.entry.text in choices else -1
-            self.entry.put(choices[(place + (-1 if event.key == "up" else 1)) % len(choices)])
+            self.entry.turn(choices, event.key == "up")
             self._check()
         elif self.entry.press(event.key, event.character):
             self._check()

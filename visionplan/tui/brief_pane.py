@@ -163,9 +163,7 @@ class BriefPane(Pane):
         elif event.key == "enter":
             self._accept()
         elif event.key in ("up", "down", "tab") and self._choices():
-            choices = self._choices()
-            place = choices.index(self.entry.text) if self.entry.text in choices else -1
-            self.entry.put(choices[(place + (-1 if event.key == "up" else 1)) % len(choices)])
+            self.entry.turn(self._choices(), event.key == "up")
             self._typed()
         elif self.entry.press(event.key, event.character):
             self._typed()

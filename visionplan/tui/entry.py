@@ -1,7 +1,7 @@
 """One line of text being typed: the text, where the cursor stands, and what the keys do to it."""
 
 import re
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 
 from visionplan.text import clean, width
 from visionplan.tui.rows import Row
@@ -33,6 +33,11 @@ class Entry:
     def put(self, text: str) -> None:
         """Put another text in the place of all."""
         self.text, self.at = text, len(text)
+
+    def turn(self, choices: Sequence[str], back: bool) -> None:
+        """Put the next of some choices, or the one before."""
+        place = choices.index(self.text) if self.text in choices else -1
+        self.put(choices[(place + (-1 if back else 1)) % len(choices)])
 
     def _move(self, to: int) -> None:
         self.at = min(max(to, 0), len(self.text))

@@ -73,10 +73,10 @@ class RigPane(Pane):
 
     @property
     def setting(self) -> tuple[Mark | None, Rig | None]:
-        """The rig looked at and how it is set, and that rig once it is judged so."""
+        """The rig looked at and how it is set, as planned where it can't be set so; and that rig once it is judged."""
         if self.base is None:
             return None, None
-        if self.mark is None:
+        if self.mark is None or self.trouble:
             return Mark(self.base.camera, self.base.lens), self.base
         return self.mark, self.shown if self.mark == self._shown_as else None
 
@@ -187,7 +187,9 @@ class RigPane(Pane):
         return []
 
     def hint(self) -> str:
-        """What limits the rig, in numbers."""
+        """Why it can't be set so, else what limits the rig, in numbers."""
+        if self.trouble:
+            return f"It can't be set so: {self.trouble}."
         told = limits(self.shown) if self.shown else ""
         return f"{told[0].upper()}{told[1:]}." if told else ""
 

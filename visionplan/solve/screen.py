@@ -36,6 +36,8 @@ def candidates(judge: Judge, arrangement: Arrangement, cameras: np.ndarray, lens
         ratio = np.minimum(w / W, h / H) if "cover" in demanded else np.full(len(cameras), np.inf)
     finest = problem.camera["kappa"] * problem.camera["P"] / problem.ask.q
     finest = finest[cameras] if "sampling" in demanded else np.zeros(len(cameras))
+    able = finest <= ratio * (1 + ROOM)  # the others have too few pixels for the field, whatever the lens
+    cameras, w, h, ratio, finest = (values[able] for values in (cameras, w, h, ratio, finest))
     pairs = (finest[:, None] <= most * (1 + ROOM)) & (ratio[:, None] * (1 + ROOM) >= least)
     if "mount" in asked:
         camera_thread, lens_thread, _ = problem.thread

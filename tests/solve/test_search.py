@@ -144,3 +144,17 @@ def unknown_but(brief, catalogue, given):
     """Whether the pair of a concession has something unknown beside what it concedes."""
     rig = judge_one(brief, catalogue, given.camera, given.lens)
     return bool(set(rig.unknown) - {given.demand})
+
+
+def test_a_search_tells_its_share_and_ends_when_whoever_watches_says_so(catalogue):
+    brief, shares = read_brief(WORKS / "briefs" / "jar-lids.toml"), []
+    rank(brief, catalogue, watch=shares.append)
+    assert len(shares) > 1
+    assert all(0 < share <= 1 for share in shares)
+
+    def enough(share):
+        raise KeyboardInterrupt
+
+    for work in (rank, concede):
+        with pytest.raises(KeyboardInterrupt):
+            work(brief, catalogue, watch=enough)

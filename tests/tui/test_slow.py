@@ -60,6 +60,31 @@ async def test_slow_ranking_says_so_is_stopped_and_made_anew(gate):
         assert desk.state.results.ranking.brief.headroom is None
 
 
+async def test_a_ranking_under_way_tells_how_much_is_done_and_ends_when_given_up(monkeypatch):
+    async with sit_down("jar-lids") as desk:
+        ended = threading.Event()
+        whole = solver.rank
+
+        def endless(brief, catalogue, order, top, concessions, watch):
+            try:
+                while True:
+                    watch(0.42)
+                    threading.Event().wait(0.01)
+            finally:
+                ended.set()
+
+        monkeypatch.setattr(solver, "rank", endless)
+        await desk.press("1")
+        desk.app.brief_pane.cursor = "station.headroom"
+        await send(desk, "delete")
+        await wait(desk, "ranking 42 % … Esc stops it")
+        await send(desk, "escape")
+        assert ended.wait(10)
+        monkeypatch.setattr(solver, "rank", whole)
+        await desk.press("ctrl+r")
+        assert desk.says("pairs fit")
+
+
 async def test_only_the_newest_of_many_is_ranked(gate):
     async with sit_down("jar-lids") as desk:
         await desk.press("1", "enter", "ctrl+u")

@@ -4,7 +4,7 @@ With a demand left out, each rig that then fits leaves an interval of the magnif
 needs to give way least. There a tolerance breaks it in about half the rigs built, so a yield asked for is left aside.
 """
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -48,9 +48,12 @@ class _Offer:
         return (self.camera, self.lens) < (other.camera, other.lens)
 
 
-def concede(brief: Brief, catalogue: Catalogue) -> tuple[Concession, ...]:
-    """Every concession by itself, least change first; none when something fits already."""
-    problem = Problem(brief, catalogue)
+def concede(brief: Brief, catalogue: Catalogue, watch: Callable[[float], None] | None = None) -> tuple[Concession, ...]:
+    """Every concession by itself, least change first; none when something fits already.
+
+    `watch` is called as that of `rank` is.
+    """
+    problem = Problem(brief, catalogue, watch=watch)
     found = survey(problem, Items.of(problem))
     return concede_problem(problem, found.count())
 

@@ -3,7 +3,7 @@
 NaN stands for a value that the catalogue leaves out and that has no default: what needs it is unknown.
 """
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from functools import cached_property
 from math import isnan
@@ -31,6 +31,8 @@ class Problem:
     """The f-number that every lens stands at, where one is given."""
     stack: Stacks | None = None
     """The one spacer stack there is, where it is given."""
+    watch: Callable[[float], None] | None = None
+    """Called now and then with the share of a search that is done; what it raises ends the search."""
 
     @cached_property
     def ask(self) -> Ask:

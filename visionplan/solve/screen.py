@@ -65,19 +65,27 @@ def _lens_ends(judge: Judge, arrangement: Arrangement):
 
 def fitting(judge: Judge, cameras: np.ndarray, lens_code: np.ndarray) -> Iterator[Rigs]:
     """Judged blocks that hold every rig of these cameras that fits, arrangement by arrangement."""
-    for arrangement in judge.problem.ask.arrangements:
+    for number, arrangement in enumerate(judge.problem.ask.arrangements):
         camera, lens = candidates(judge, arrangement, cameras, lens_code)
         for begin in range(0, len(camera), CHUNK):
             chunk = slice(begin, begin + CHUNK)
             yield judge.rigs(arrangement, camera[chunk], lens[chunk])
+            _tell(judge, number + (begin + CHUNK) / len(camera))
 
 
 def everything(judge: Judge, cameras: np.ndarray) -> Iterator[Rigs]:
     """Judged blocks of every rig that a pair could choose, whether it fits or not."""
     lenses = np.arange(len(judge.problem.catalogue.lenses))
-    for arrangement in judge.problem.ask.arrangements:
+    for number, arrangement in enumerate(judge.problem.ask.arrangements):
         here = cameras[judge.problem.camera["line"][cameras] == arrangement.line]
         step = max(1, CHUNK // max(1, len(lenses)))
         for begin in range(0, len(here), step):
             some = here[begin : begin + step]
             yield judge.rigs(arrangement, np.repeat(some, len(lenses)), np.tile(lenses, len(some)), all_stacks=True)
+            _tell(judge, number + (begin + step) / len(here))
+
+
+def _tell(judge: Judge, arrangements: float) -> None:
+    """Tell who watches how much of the arrangements is done."""
+    if judge.problem.watch:
+        judge.problem.watch(min(arrangements / len(judge.problem.ask.arrangements), 1.0))

@@ -49,7 +49,12 @@ class _Pairs:
 
 
 def rank(
-    brief: Brief, catalogue: Catalogue, order: str = "value", top: int = 20, concessions: bool | None = None
+    brief: Brief,
+    catalogue: Catalogue,
+    order: str = "value",
+    top: int = 20,
+    concessions: bool | None = None,
+    watch: Callable[[float], None] | None = None,
 ) -> Ranking:
     """The best rigs, one a pair; where fewer than `top` fit, the nearest misses follow.
 
@@ -58,9 +63,10 @@ def rank(
     order : a name in `ORDERS`
     top : how many rigs at most
     concessions : whether to work them out; None for only when nothing fits
+    watch : called now and then with the share of a search that is done; what it raises ends the work
     """
     begin = perf_counter()
-    problem = Problem(brief, catalogue)
+    problem = Problem(brief, catalogue, watch=watch)
     items = Items.of(problem)
     found = survey(problem, items, order)
     fitting = found.count()

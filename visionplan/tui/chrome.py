@@ -44,7 +44,8 @@ class Head(Lines):
         if self.app.reading:
             return self.app.reading
         if self.app.slow:
-            return "ranking … Esc stops it"
+            share = "" if self.app.share is None else f" {100 * self.app.share:.0f} %"
+            return f"ranking{share} … Esc stops it"
         return counts(self.app.state)
 
     def _scale(self, width: int) -> Row:

@@ -8,6 +8,7 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field, replace
 from functools import cache
 from threading import Condition, Thread
+from time import monotonic
 from typing import TYPE_CHECKING
 
 from visionplan import units
@@ -25,6 +26,8 @@ from visionplan.tui.work import Mark
 if TYPE_CHECKING:
     from visionplan.solve.asbuilt import AsBuilt
 
+_TELL = 0.4
+"""Seconds between two tellings of how much is done."""
 URGENCY = ("take", "rank", "judge", "built", "concede", "marks", "more", "tolls")
 """Kinds of requests, the most urgent first; of each kind only the newest waits."""
 
@@ -65,6 +68,12 @@ class Answer:
     built: "AsBuilt | str | None" = None
     """What the measures tell, or why they can't."""
     fault: str = ""
+    share: float | None = None
+    """How much is done, where that is all there is to tell yet."""
+
+
+class Stopped(Exception):
+    """What is being worked out isn't wanted any more."""
 
 
 class Solver:
@@ -77,6 +86,8 @@ class Solver:
         self._change = Condition()
         self._closed = False
         self._doing: Request | None = None
+        self._stop = False
+        """Whether what is being done was given up."""
         self._thread = Thread(target=self._run, name="solver", daemon=True)
         self._thread.start()
 
@@ -91,6 +102,11 @@ class Solver:
         with self._change:
             for kind in kinds:
                 self._waiting.pop(kind, None)
+
+    def give_up(self) -> None:
+        """Stop what is being worked out, at the next place where that can be done."""
+        with self._change:
+            self._stop = self._doing is not None
 
     @property
     def under_way(self) -> frozenset[str]:
@@ -108,7 +124,7 @@ class Solver:
     def _run(self) -> None:
         while True:
             with self._change:
-                self._doing = None
+                self._doing, self._stop = None, False
                 self._change.wait_for(lambda: self._waiting or self._closed)
                 if self._closed:
                     return
@@ -116,6 +132,8 @@ class Solver:
                 request = self._doing = self._waiting.pop(kind)
             try:
                 self._do(request)
+            except Stopped:
+                pass
             except InputError as error:
                 self._answer(Answer(request, fault=error.faults[0].found))
             except MemoryError:
@@ -127,12 +145,28 @@ class Solver:
         if not self._closed:
             self._answered(answer)
 
+    def _watch(self, request: Request) -> Callable[[float], None]:
+        """Stops work that was given up or that a newer ranking overtakes; tells now and then how much is done."""
+        told = monotonic()
+
+        def watch(share: float) -> None:
+            nonlocal told
+            with self._change:
+                if self._closed or self._stop or "rank" in self._waiting:
+                    raise Stopped
+            if request.kind == "rank" and monotonic() - told > _TELL:
+                told = monotonic()
+                self._answer(Answer(request, share=share))
+
+        return watch
+
     def _do(self, request: Request) -> None:
         brief, catalogue = request.brief, request.catalogue
         if request.kind in ("rank", "more"):
-            self._answer(Answer(request, ranking=rank(brief, catalogue, request.order, request.top, False)))
+            watch = self._watch(request)
+            self._answer(Answer(request, ranking=rank(brief, catalogue, request.order, request.top, False, watch)))
         elif request.kind == "concede":
-            self._answer(Answer(request, concessions=concede(brief, catalogue)))
+            self._answer(Answer(request, concessions=concede(brief, catalogue, self._watch(request))))
         elif request.kind == "judge":
             self._answer(Answer(request, rigs={mark: moved(request.rig, mark) for mark in request.marks}))
         elif request.kind == "marks":

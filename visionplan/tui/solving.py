@@ -35,6 +35,8 @@ class Solving:
         self.top = FIRST
         self.slow = False
         """Whether a ranking takes long."""
+        self.share: float | None = None
+        """How much of it is done, once that is known."""
         self._ranked = -1
         """Generation of the ranking shown."""
 
@@ -56,7 +58,7 @@ class Solving:
 
     def rank(self) -> None:
         """Have the brief ranked, as it stands or is being typed."""
-        self.top = FIRST
+        self.top, self.share = FIRST, None
         self.solver.drop("more", "tolls", "marks", "concede")
         self.ask("rank")
         self.set_timer(_SLOW, self._mind)  # type: ignore[attr-defined]
@@ -71,6 +73,7 @@ class Solving:
     def stop(self) -> None:
         """Give up the ranking that is under way; its answer is not waited for."""
         if self.slow:
+            self.solver.give_up()
             self.solver.drop("rank", "concede", "marks", "tolls", "more")
             self._ranked, self.slow = self.state.generation, False  # type: ignore[attr-defined]
             self.state.results.fault = "stopped; Ctrl+R ranks anew"  # type: ignore[attr-defined]
@@ -99,7 +102,9 @@ class Solving:
         state = self.state  # type: ignore[attr-defined]
         if request.generation != state.generation:
             return
-        if answer.fault:
+        if answer.share is not None:
+            self.share = answer.share
+        elif answer.fault:
             self._failed(answer)
         elif request.kind == "rank":
             self._take_ranking(answer)

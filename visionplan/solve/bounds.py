@@ -13,7 +13,6 @@ from visionplan.solve.case import Case
 from visionplan.solve.span import EDGE
 
 NEVER = (np.inf, 0.0)
-NONE = (0.0, np.inf)
 STRAIGHT = 0.01
 """How far off its flange a telecentric lens may sit, mm."""
 

@@ -17,14 +17,6 @@ def holds(lo, hi):
     return lo <= hi * (1 + EDGE)
 
 
-def intersect(bounds):
-    """Greatest lo and least hi of pairs of arrays that broadcast; (0, inf) of none."""
-    lo, hi = 0.0, np.inf
-    for low, high in bounds:
-        lo, hi = np.maximum(lo, low), np.minimum(hi, high)
-    return lo, hi
-
-
 def working_point(lo_p, hi_p, lo, hi, M):
     """The magnification a rig stands at.
 

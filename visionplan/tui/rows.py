@@ -41,11 +41,6 @@ def ends(left: Sequence[Segment], right: Sequence[Segment], cells: int) -> Row:
     return [*fit(left, max(0, cells - row_width(right))), *right]
 
 
-def with_role(row: Sequence[Segment], role: str) -> Row:
-    """The row with another role added to every segment."""
-    return [(text, f"{own} {role}".strip()) for text, own in row]
-
-
 def cell(text: str, cells: int, role: str = "", right: bool = False) -> Segment:
     """Text cut or filled to so many cells."""
     return pad(shorten(text, cells), cells, right), role

@@ -7,7 +7,8 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from tests.solve.works import catalogue, table
+from tests.reference.random_parts import table
+from tests.solve.works import catalogue
 from visionplan.brief.model import Brief
 from visionplan.solve import judge_one, rank
 from visionplan.solve.stacks import stacks_between

@@ -1,8 +1,7 @@
 """Catalogues and rigs of a few rows, built in memory."""
 
-import numpy as np
-
-from visionplan.catalogue.items import COLUMNS, Catalogue, Table
+from tests.reference.random_parts import table
+from visionplan.catalogue.items import Catalogue
 
 LENS = {
     "id": "lens",
@@ -30,16 +29,6 @@ CAMERA = {
     "price": 300.0,
     "flange distance": 17.526,
 }
-
-
-def table(item: str, rows: list[dict]) -> Table:
-    values = {}
-    for column in COLUMNS[item]:
-        missing = {"number": np.nan, "count": np.nan, "stops": ()}.get(column.kind, "")
-        cells = [row.get(column.name, missing) for row in rows]
-        values[column.name] = np.array(cells, float) if column.kind in ("number", "count") else cells
-    index = {row["id"]: i for i, row in enumerate(rows)}
-    return Table(item, values, range(2, 2 + len(rows)), f"{item}.csv", index=index)
 
 
 def catalogue(lenses=({},), cameras=({},), spacers=()) -> Catalogue:

@@ -11,11 +11,12 @@ import numpy as np
 
 from visionplan.solve import span
 from visionplan.solve.ask import Arrangement
+from visionplan.solve.bounds import STRAIGHT
 from visionplan.solve.case import Case, case_of
 from visionplan.solve.demands import BY_NAME, MET, UNKNOWN, asked_demands
 from visionplan.solve.gates import asked_gates, judge_gate
 from visionplan.solve.problem import Problem
-from visionplan.solve.rigs import Bounds, Rigs, rows_of
+from visionplan.solve.rigs import Bounds, Rigs, flat, rows_of
 
 _TRAVEL, _HEADROOM = BY_NAME["travel"], BY_NAME["headroom"]
 
@@ -109,10 +110,10 @@ class Judge:
         return self._rigs(arrangement, case, lambda: bounds, None, bounds.unknown, stack, source)
 
     def _rigs(self, arrangement, case: Case, intersect, ends: Bounds | None, unknown, stack, source) -> Rigs:
-        gates, unknown = np.full(len(source), MET), _flat(unknown, len(source))
+        gates, unknown = np.full(len(source), MET), flat(unknown, len(source))
         for gate in self.gates:
             if gate.of == "pair":
-                codes = _flat(judge_gate(gate, case), len(gates))
+                codes = flat(judge_gate(gate, case), len(gates))
                 gates, unknown = np.maximum(gates, codes), unknown | (codes == UNKNOWN)
         return Rigs(arrangement, case, intersect, ends, stack, gates, unknown, source, self.stop_gates)
 
@@ -182,15 +183,11 @@ def _extensions(case: Case, bounds: Bounds, all_stacks: bool):
     with np.errstate(invalid="ignore", over="ignore"):
         lo, hi = np.fmax(bounds.lo, case.M), np.fmin(bounds.hi, case.M)
         shorter, longer = np.minimum(lo, hi), np.maximum(lo, hi)
-        low = np.where(case.telecentric, -0.01, case.f * shorter - case.x) - case.d
-        high = np.where(case.telecentric, 0.01, case.f * longer) - case.d
+        low = np.where(case.telecentric, -STRAIGHT, case.f * shorter - case.x) - case.d
+        high = np.where(case.telecentric, STRAIGHT, case.f * longer) - case.d
     stop = np.isfinite(case.N) & (lo < np.inf) & (hi > 0)
     if not all_stacks:
         stop = stop & span.holds(lo, hi)
     low = np.where(stop & ~np.isnan(low), low, np.inf).min(axis=1)
     high = np.where(stop & ~np.isnan(high), high, -np.inf).max(axis=1)
     return low, high
-
-
-def _flat(codes, count: int):
-    return np.broadcast_to(np.reshape(codes, -1) if np.ndim(codes) else codes, count)

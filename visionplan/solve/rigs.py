@@ -168,6 +168,11 @@ class Rigs:
         return np.where(self.fits, span.grade(self.room, self.case.brief.comfort), len(span.GRADES))
 
 
+def flat(values, count: int) -> np.ndarray:
+    """Values of so many rigs, (rigs, 1) or the same for all, as shape (rigs,)."""
+    return np.broadcast_to(np.reshape(values, -1) if np.ndim(values) else values, count)
+
+
 def rows_of(values, rows):
     """Some rows of an array, or what is the same for all rows."""
     return values[rows] if np.ndim(values) and len(values) > 1 else values

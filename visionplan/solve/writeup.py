@@ -25,7 +25,7 @@ from visionplan.solve.gates import ASKED, GATES, Gate, judge_gate
 from visionplan.solve.gates import price as rig_price
 from visionplan.solve.judge import Judge
 from visionplan.solve.rig import Contrast, Rig, Value, Verdict
-from visionplan.solve.rigs import stop_code
+from visionplan.solve.rigs import flat, stop_code
 
 End = tuple[float, str]
 """A bound of magnification and the demand that sets it."""
@@ -100,17 +100,17 @@ def _demand_columns(demand: Demand, judge: Judge, case: Case, m) -> dict[str, An
     if demand not in judge.demands:
         return {"lo": [0.0] * rigs, "hi": [np.inf] * rigs, "code": [NOT_ASKED] * rigs}
     lo, hi, code = judge_demand(demand, case)
-    lo, hi, code = _flat(lo, rigs), _flat(hi, rigs), _flat(code, rigs)
+    lo, hi, code = flat(lo, rigs), flat(hi, rigs), flat(code, rigs)
     at = m[:, 0]
     with np.errstate(invalid="ignore", divide="ignore", over="ignore"):
         outside = ~(span.holds(lo, at) & span.holds(at, hi)) & np.isfinite(at)
-        got = _flat(demand.check(case, m), rigs)
+        got = flat(demand.check(case, m), rigs)
     code = np.where((code == MET) & outside, MISSED, code)
     asked = demand.asked(case)
     if isinstance(asked, tuple):
-        asked = list(zip(*(_flat(end, rigs).tolist() for end in asked)))
+        asked = list(zip(*(flat(end, rigs).tolist() for end in asked)))
     else:
-        asked = _flat(asked, rigs).tolist()
+        asked = flat(asked, rigs).tolist()
     return {"lo": lo.tolist(), "hi": hi.tolist(), "code": code.tolist(), "asked": asked, "got": got.tolist()}
 
 
@@ -122,7 +122,7 @@ def _gate_columns(gate: Gate, judge: Judge, case: Case, m) -> np.ndarray:
         return judge_gate(gate, judge.problem)[case.cameras]
     if gate.of == "lens":
         return judge_gate(gate, judge.problem)[case.lenses]
-    return stop_code(gate, case, m) if gate.of == "stop" else _flat(judge_gate(gate, case), rigs)
+    return stop_code(gate, case, m) if gate.of == "stop" else flat(judge_gate(gate, case), rigs)
 
 
 def _rig(chosen: Chosen, number: int, one: Case, demands, gates, shown, contrast, ends: "_Ends") -> Rig:
@@ -256,7 +256,3 @@ class _Ends:
         if not span.holds(lo, middle):
             return low
         return high if not span.holds(middle, hi) else None
-
-
-def _flat(values, count: int) -> np.ndarray:
-    return np.broadcast_to(np.reshape(values, -1) if np.ndim(values) else values, count)
